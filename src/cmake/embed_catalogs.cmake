@@ -1,0 +1,11 @@
+# Writes OUTPUT, a C++ source with the text of every catalogue file in FOLDER.
+file(GLOB files ${FOLDER}/*.toml)
+list(SORT files)
+set(text "#include \"embedded.hpp\"\n\nnamespace gapwright {\n\nconst std::vector<EmbeddedFile>& embedded_catalogs() {\n  static const std::vector<EmbeddedFile> files = {\n")
+foreach(file ${files})
+  get_filename_component(name ${file} NAME)
+  file(READ ${file} content)
+  string(APPEND text "      {\"${name}\", R\"gw__(${content})gw__\"},\n")
+endforeach()
+string(APPEND text "  };\n  return files;\n}\n\n}  // namespace gapwright\n")
+file(WRITE ${OUTPUT} "${text}")
