@@ -1,0 +1,57 @@
+// Loading and validating the catalogues.
+#pragma once
+
+#include <gapwright/catalog/entries.hpp>
+
+#include <cstdint>
+#include <filesystem>
+#include <string>
+#include <string_view>
+#include <vector>
+
+namespace gapwright {
+
+/// All catalogue entries; the first of each list is the default.
+class Catalogs {
+ public:
+  /// The catalogues compiled into the program. Throws InputError only if the build is broken.
+  static const Catalogs& built_in();
+  /// The same files read from a folder (hopping.toml, background.toml, contact.toml, checks.toml).
+  /// A missing file keeps the built-in one; built-in checks that ask for a hopping set the folder
+  /// does not hold are left out. Throws InputError with file, line, text and caret.
+  static Catalogs from_folder(const std::filesystem::path& folder);
+
+  /// Entry by name; an empty name is the default. Throws InputError with the nearest name.
+  const HoppingSet& hopping(const std::string& name = {}) const;
+  const Background& background(const std::string& name = {}) const;
+  const ContactTarget& contact_target(const std::string& name = {}) const;
+
+  const std::vector<HoppingSet>& hopping_sets() const { return hopping_sets_; }
+  const std::vector<Background>& backgrounds() const { return backgrounds_; }
+  const std::vector<ContactTarget>& contact_targets() const { return contact_targets_; }
+  const std::vector<CheckRow>& checks() const { return checks_; }
+
+  /// 64-bit hash over all values (as IEEE bits) and names that enter results; titles, sources and
+  /// checks do not. Sixteen hexadecimal digits.
+  std::string hash() const;
+
+ private:
+  std::vector<HoppingSet> hopping_sets_;
+  std::vector<Background> backgrounds_;
+  std::vector<ContactTarget> contact_targets_;
+  std::vector<CheckRow> checks_;
+};
+
+/// Incremental FNV-1a hash used for catalogue hashes and store keys: text and IEEE bits.
+class ContentHash {
+ public:
+  ContentHash& add(std::string_view text);
+  ContentHash& add(double value);
+  ContentHash& add(std::int64_t value);
+  std::string hex() const;
+
+ private:
+  std::uint64_t state_ = 14695981039346656037ULL;
+};
+
+}  // namespace gapwright

@@ -1,0 +1,133 @@
+#include "embedded.hpp"
+#include "readers.hpp"
+
+#include <gapwright/catalog/catalogs.hpp>
+
+#include <algorithm>
+
+namespace gapwright {
+namespace {
+
+const std::vector<std::string>& file_names() {
+  static const std::vector<std::string> names = {"hopping.toml", "background.toml", "contact.toml",
+                                                 "checks.toml"};
+  return names;
+}
+
+template <class Entry>
+std::vector<std::string> names_of(const std::vector<Entry>& entries) {
+  std::vector<std::string> names;
+  for (const Entry& entry : entries) names.push_back(entry.name);
+  return names;
+}
+
+template <class Entry>
+const Entry& entry_of(const std::vector<Entry>& entries, const std::string& name,
+                      const std::string& kind) {
+  if (name.empty()) return entries.front();
+  for (const Entry& entry : entries)
+    if (entry.name == name) return entry;
+  const auto names = names_of(entries);
+  throw InputError({"unknown " + kind + " '" + name + "'",
+                    {},
+                    {},
+                    "one of " + joined(names),
+                    nearest_word(name, names)});
+}
+
+TomlReader built_in_file(const std::string& name) {
+  for (const EmbeddedFile& file : embedded_catalogs())
+    if (file.name == name) return TomlReader::from_text(file.text, "built-in " + name);
+  throw InputError({"catalogue is missing", "built-in " + name, {}, "a complete build", {}});
+}
+
+// A misspelled file would be passed over in silence.
+void check_folder(const std::filesystem::path& folder) {
+  if (!std::filesystem::is_directory(folder))
+    throw InputError({"is not a folder", folder.string(), {}, "a folder of catalogues", {}});
+  for (const auto& item : std::filesystem::directory_iterator(folder)) {
+    const std::string name = item.path().filename().string();
+    if (item.path().extension() != ".toml") continue;
+    if (std::find(file_names().begin(), file_names().end(), name) != file_names().end()) continue;
+    throw InputError({"unknown catalogue",
+                      item.path().string(),
+                      {},
+                      "one of " + joined(file_names()),
+                      nearest_word(name, file_names())});
+  }
+}
+
+}  // namespace
+
+const Catalogs& Catalogs::built_in() {
+  static const Catalogs catalogs = [] {
+    Catalogs all;
+    all.hopping_sets_ = read_hopping_sets(built_in_file("hopping.toml"));
+    all.backgrounds_ = read_backgrounds(built_in_file("background.toml"));
+    all.contact_targets_ = read_contact_targets(built_in_file("contact.toml"));
+    all.checks_ = read_checks(built_in_file("checks.toml"), names_of(all.hopping_sets_));
+    return all;
+  }();
+  return catalogs;
+}
+
+Catalogs Catalogs::from_folder(const std::filesystem::path& folder) {
+  check_folder(folder);
+  Catalogs all = built_in();
+  const auto replace = [&](const std::string& name, auto&& take) {
+    const auto file = folder / name;
+    if (std::filesystem::exists(file)) take(TomlReader::from_file(file));
+  };
+  replace("hopping.toml", [&](const TomlReader& file) {
+    all.hopping_sets_ = read_hopping_sets(file);
+    const auto names = names_of(all.hopping_sets_);
+    std::erase_if(all.checks_, [&](const CheckRow& row) {
+      return !row.hopping.empty() &&
+             std::find(names.begin(), names.end(), row.hopping) == names.end();
+    });
+  });
+  replace("background.toml",
+          [&](const TomlReader& file) { all.backgrounds_ = read_backgrounds(file); });
+  replace("contact.toml",
+          [&](const TomlReader& file) { all.contact_targets_ = read_contact_targets(file); });
+  replace("checks.toml", [&](const TomlReader& file) {
+    all.checks_ = read_checks(file, names_of(all.hopping_sets_));
+  });
+  return all;
+}
+
+const HoppingSet& Catalogs::hopping(const std::string& name) const {
+  return entry_of(hopping_sets_, name, "hopping set");
+}
+
+const Background& Catalogs::background(const std::string& name) const {
+  return entry_of(backgrounds_, name, "background");
+}
+
+const ContactTarget& Catalogs::contact_target(const std::string& name) const {
+  return entry_of(contact_targets_, name, "contact target");
+}
+
+std::string Catalogs::hash() const {
+  ContentHash hash;
+  for (const HoppingSet& set : hopping_sets_) {
+    hash.add(set.name).add(static_cast<std::int64_t>(set.hopping_eV.size()));
+    for (const double value : set.hopping_eV) hash.add(value);
+    for (const double value : set.overlap) hash.add(value);
+    hash.add(set.onsite_eV).add(static_cast<std::int64_t>(set.curvature));
+  }
+  for (const Background& background : backgrounds_)
+    hash.add(background.name)
+        .add(background.in_plane_strength_nm)
+        .add(background.in_plane_energy_eV)
+        .add(background.normal_strength_nm)
+        .add(background.normal_energy_eV);
+  for (const ContactTarget& target : contact_targets_)
+    hash.add(target.name)
+        .add(static_cast<std::int64_t>(target.kind))
+        .add(target.spacing_nm)
+        .add(target.energy_eV_per_nm2);
+  return hash.hex();
+}
+
+}  // namespace gapwright
