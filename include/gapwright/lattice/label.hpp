@@ -1,0 +1,42 @@
+// Object labels as the trade writes them, and back.
+#pragma once
+
+#include <gapwright/lattice/tube.hpp>
+
+#include <string>
+#include <string_view>
+#include <variant>
+#include <vector>
+
+namespace gapwright {
+
+/// One or more coaxial tubes, innermost first.
+struct TubeObject {
+  std::vector<Tube> walls;
+  bool operator==(const TubeObject& other) const;
+};
+
+/// The flat carbon sheet.
+struct SheetObject {
+  bool operator==(const SheetObject&) const = default;
+};
+
+/// What a label can name.
+using Object = std::variant<TubeObject, SheetObject>;
+
+struct ParsedLabel {
+  Object object;
+  std::vector<std::string> notes;  ///< e.g. "(5,8) is the mirror image of (8,5)"
+};
+
+/// Parses (10,10), 10,10, 5,5@10,10 (inner@outer, more by more @), graphene. m > n is accepted as
+/// the mirror image and noted. Blanks around parts are allowed. Throws InputError naming the label
+/// and, where there is one, the nearest object that is accepted, when it is anything else, when a
+/// diameter is outside 0.3 … 20 nm, or when walls are not in rising order with gaps of at least
+/// 0.2 nm.
+ParsedLabel parse_label(std::string_view label);
+
+/// "(5,5)@(10,10)", "graphene".
+std::string label_of(const Object& object);
+
+}  // namespace gapwright
