@@ -1,0 +1,49 @@
+#include <gapwright/catalog/constants.hpp>
+#include <gapwright/join/density.hpp>
+
+#include <algorithm>
+#include <cmath>
+#include <stdexcept>
+
+namespace gapwright {
+
+namespace {
+/// What windows leave out at large wave numbers, orders and frequencies, relative to the tolerance.
+constexpr double truncation_share = 0.03;
+
+/// Accuracy of the responses, relative to the energy.
+double response_accuracy(double tolerance) {
+  return tolerance < 1e-5 ? 1e-8 : 1e-6;
+}
+}  // namespace
+
+IndexRange contact_frequencies(const Nodes& nodes) {
+  // Above the plasmons of the background F falls as ξ^-4; the cut leaves (30 eV/ξ)^3 of that.
+  const double highest = 600.0 * std::pow(1e-4 / std::min(nodes.tolerance, 1e-4), 0.2);
+  const int first = nodes.xi.index_below(1e-3);
+  return {first, nodes.xi.index_above(highest) - first + 1};
+}
+
+Estimate frequency_sum(const FrequencyDensity& density, const Nodes& nodes, IndexRange xi,
+                       const Conditions& conditions) {
+  validate(conditions);
+  if (density.full.size() != std::size_t(xi.count) || density.halved.size() != density.full.size())
+    throw std::invalid_argument("frequency_sum: one density value a frequency is required");
+  const AxisWeights weights =
+      trapezoid_weights(nodes.xi, xi, {.constant_below = true, .power_above = 4.0});
+  double sum = 0.0, halved_waves = 0.0, halved_frequencies = 0.0;
+  for (std::size_t k = 0; k < density.full.size(); ++k) {
+    sum += weights.full[k] * density.full[k];
+    halved_waves += weights.full[k] * density.halved[k];
+    halved_frequencies += weights.halved[k] * density.full[k];
+  }
+  Estimate energy;
+  energy.value = sum / (2 * constants::pi);
+  energy.error = (trapezoid_error(sum, halved_waves) + trapezoid_error(sum, halved_frequencies)) /
+                     (2 * constants::pi) +
+                 (truncation_share * nodes.tolerance + response_accuracy(nodes.tolerance)) *
+                     std::fabs(energy.value);
+  return energy;
+}
+
+}  // namespace gapwright
