@@ -1,0 +1,63 @@
+// What is reported for a pair (METHODS §7).
+#pragma once
+
+#include <optional>
+#include <string>
+#include <string_view>
+#include <variant>
+#include <vector>
+
+namespace gapwright {
+
+enum class Status { ok, no_minimum, not_converged, outside_range };
+std::string_view status_word(Status status);
+
+/// Energies of one interface of a multi-wall tube.
+struct Interface {
+  std::string inside;   ///< label of the walls inside the cut
+  std::string outside;  ///< label of the walls outside
+  double gap_nm = 0.0;
+  double cut_energy_eV_per_nm = 0.0;
+  double pull_out_force_nN = 0.0;
+};
+
+/// One row; an empty field has no meaning for this row. Names, order and units of the fields are
+/// those of `binding_fields()`; at T > 0 energies are free energies.
+struct Binding {
+  std::string object_1, object_2;
+  std::string kind_1, kind_2;
+  double diameter_1_nm = 0.0, diameter_2_nm = 0.0;
+  double chiral_angle_1_deg = 0.0, chiral_angle_2_deg = 0.0;
+  double band_gap_1_eV = 0.0, band_gap_2_eV = 0.0;
+  std::string arrangement;
+  std::optional<double> gap_nm;
+  double temperature_K = 0.0;
+  double chemical_potential_eV = 0.0;
+  std::string medium = "vacuum";
+  std::string contact_target;
+  std::optional<double> dispersion_eV_per_nm, contact_eV_per_nm, energy_eV_per_nm;
+  std::optional<double> energy_mJ_per_m2, energy_meV_per_atom;
+  std::optional<double> pressure_dispersion_GPa, pressure_GPa;
+  std::optional<double> electronic_share_eV_per_nm, thermal_share;
+  std::optional<double> pull_out_force_nN, cut_energy_eV_per_nm, pair_potential_eV_per_nm;
+  std::optional<double> relative_error, energy_error, pressure_error, electronic_share_error;
+  Status status = Status::ok;
+  std::string message;                ///< why the status is not ok
+  std::vector<Interface> interfaces;  ///< more than two walls
+};
+
+/// A field of a row by name: how exports, stores and sorting reach it.
+using FieldValue = std::variant<std::monostate, double, std::string>;
+struct BindingField {
+  std::string_view name;
+  bool is_text;
+  FieldValue (*get)(const Binding&);
+  void (*set)(Binding&, const FieldValue&);
+};
+
+/// All fields in the order of CSV, JSON and store columns.
+const std::vector<BindingField>& binding_fields();
+/// The field, or InputError with the nearest name.
+const BindingField& binding_field(std::string_view name);
+
+}  // namespace gapwright

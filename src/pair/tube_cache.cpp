@@ -1,0 +1,108 @@
+#include "tube_cache.hpp"
+
+#include <gapwright/join/coaxial.hpp>
+
+namespace gapwright {
+namespace {
+
+constexpr std::size_t scatterer_bytes = std::size_t(300) << 20;
+
+// Waves of the cells of any tube: q from 0.0005 nm^-1 for the widest; at the largest round-trip
+// exponent x of a gap of 0.2 nm or more, Q stays below about 4x.
+constexpr double flat_lowest_per_nm = 4e-4;
+constexpr double flat_highest_per_exponent = 4.0;
+
+}  // namespace
+
+TubeCache::Entry& TubeCache::entry(const Tube& tube) {
+  const std::lock_guard lock(entries_mutex_);
+  auto& slot = entries_[tube.chirality];
+  if (!slot) slot = std::make_unique<Entry>();
+  return *slot;
+}
+
+void TubeCache::announce(const Tube& tube, const Window& window) {
+  Entry& e = entry(tube);
+  const std::lock_guard lock(e.mutex);
+  e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
+}
+
+void TubeCache::warm(const Tube& tube) {
+  response(tube, {});
+}
+
+std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const Window& window) {
+  Entry& e = entry(tube);
+  const std::lock_guard lock(e.mutex);
+  if (e.response && e.response->window().covers(window)) return e.response;
+  if (window.q.count > 0)
+    e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
+  if (e.announced.q.count == 0) return nullptr;
+  e.response = std::make_shared<const ShellResponse>(
+      tube_response(tube, carbon_.hopping, carbon_.conditions, carbon_.nodes, e.announced));
+  return e.response;
+}
+
+TubeGaps TubeCache::gaps(const Tube& tube) {
+  Entry& e = entry(tube);
+  const std::lock_guard lock(e.mutex);
+  if (!e.gaps) e.gaps = std::make_unique<TubeGaps>(tube_gaps(tube, carbon_.hopping));
+  return *e.gaps;
+}
+
+const FlatResponse& TubeCache::flat(IndexRange xi) {
+  const std::lock_guard lock(flat_mutex_);
+  if (!flat_)
+    flat_ = std::make_unique<FlatResponse>(
+        carbon_.hopping, carbon_.conditions, carbon_.nodes, xi, flat_lowest_per_nm,
+        flat_highest_per_exponent * largest_exponent(carbon_.nodes.tolerance));
+  return *flat_;
+}
+
+std::shared_ptr<const Scatterer> TubeCache::kept(const Key& key, const Window& window) {
+  const std::lock_guard lock(kept_mutex_);
+  const auto found = kept_index_.find(key);
+  if (found == kept_index_.end() || !found->second->scatterer->window().covers(window))
+    return nullptr;
+  kept_.splice(kept_.begin(), kept_, found->second);
+  return found->second->scatterer;
+}
+
+void TubeCache::keep(const Key& key, std::shared_ptr<const Scatterer> scatterer) {
+  const std::lock_guard lock(kept_mutex_);
+  if (const auto found = kept_index_.find(key); found != kept_index_.end()) {
+    kept_bytes_ -= found->second->scatterer->bytes();
+    kept_.erase(found->second);
+    kept_index_.erase(found);
+  }
+  kept_bytes_ += scatterer->bytes();
+  kept_.push_front({key, std::move(scatterer)});
+  kept_index_[key] = kept_.begin();
+  while (kept_bytes_ > scatterer_bytes && kept_.size() > 1) {
+    kept_bytes_ -= kept_.back().scatterer->bytes();
+    kept_index_.erase(kept_.back().key);
+    kept_.pop_back();
+  }
+}
+
+std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel channel,
+                                                      Electrons electrons, const Window& window) {
+  const Key key{tube.chirality, channel, electrons};
+  if (auto found = kept(key, window)) return found;
+  const auto own = response(tube, window);
+  const Window& whole = own->window();
+  std::shared_ptr<const Scatterer> made;
+  if (electrons == Electrons::own) {
+    made = std::make_shared<const Scatterer>(
+        shell_scatterer(channel, *own, carbon_.background, whole));
+  } else {
+    const ShellResponse flat_shell =
+        flat_shell_response(flat(whole.xi), tube.radius_nm, carbon_.nodes, whole);
+    made = std::make_shared<const Scatterer>(
+        shell_scatterer(channel, flat_shell, carbon_.background, whole));
+  }
+  keep(key, made);
+  return made;
+}
+
+}  // namespace gapwright

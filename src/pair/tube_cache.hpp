@@ -1,0 +1,76 @@
+// Responses and scatterers of tubes, shared by all rows of a Binder.
+#pragma once
+
+#include <gapwright/bands/tube_bands.hpp>
+#include <gapwright/catalog/entries.hpp>
+#include <gapwright/response/flat_response.hpp>
+#include <gapwright/shell/scatterer.hpp>
+
+#include <list>
+#include <map>
+#include <memory>
+#include <mutex>
+#include <tuple>
+
+namespace gapwright {
+
+/// The carbon of a Binder: what every body's response depends on.
+struct Carbon {
+  HoppingSet hopping;
+  Background background;
+  Conditions conditions;
+  Nodes nodes;
+};
+
+/// Whose π electrons a shell has.
+enum class Electrons { own, flat };
+
+/// Computes each tube's response once, on the largest window asked for so far, and keeps scatterers
+/// in a least-recently-used store of bounded size. Safe to call from several threads.
+class TubeCache {
+ public:
+  explicit TubeCache(const Carbon& carbon) : carbon_(carbon) {}
+
+  /// Announces that the tube will be asked for this window.
+  void announce(const Tube& tube, const Window& window);
+  /// Computes the response now, if it is not there.
+  void warm(const Tube& tube);
+
+  /// A scatterer whose window covers the one given.
+  std::shared_ptr<const Scatterer> scatterer(const Tube& tube, Channel channel, Electrons electrons,
+                                             const Window& window);
+  TubeGaps gaps(const Tube& tube);
+
+  /// The flat sheet's response on waves that any tube's cells need.
+  const FlatResponse& flat(IndexRange xi);
+
+ private:
+  struct Entry {
+    std::mutex mutex;
+    Window announced;
+    std::shared_ptr<const ShellResponse> response;
+    std::unique_ptr<TubeGaps> gaps;
+  };
+  using Key = std::tuple<Chirality, Channel, Electrons>;
+  struct Kept {
+    Key key;
+    std::shared_ptr<const Scatterer> scatterer;
+  };
+
+  Entry& entry(const Tube& tube);
+  std::shared_ptr<const ShellResponse> response(const Tube& tube, const Window& window);
+  std::shared_ptr<const Scatterer> kept(const Key& key, const Window& window);
+  void keep(const Key& key, std::shared_ptr<const Scatterer> scatterer);
+
+  const Carbon& carbon_;
+  std::mutex entries_mutex_;
+  std::map<Chirality, std::unique_ptr<Entry>> entries_;
+  std::mutex kept_mutex_;
+  std::list<Kept> kept_;  // most recent first
+  std::map<Key, std::list<Kept>::iterator> kept_index_;
+  std::size_t kept_bytes_ = 0;
+  std::mutex flat_mutex_;
+  std::unique_ptr<FlatResponse> flat_;
+};
+
+}  // namespace gapwright
