@@ -1,4 +1,5 @@
 #include "coaxial_kernel.hpp"
+#include "multipoles.hpp"
 
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/join/coaxial.hpp>
@@ -18,20 +19,9 @@ const InterfaceKernel& interface_kernel() {
   return portable::interface_kernel;
 }
 
-namespace {
-
-/// η of the uniform expansion I_m ~ e^η, K_m ~ e^-η at x (Abramowitz & Stegun 9.7.7).
-double decay(int m, double x) {
-  if (m == 0) return x;
-  const double root = std::sqrt(double(m) * m + x * x);
-  return root + m * std::log(x / (m + root));
-}
-
-}  // namespace
-
 double largest_exponent(double tolerance) {
   double x = 2.0;
-  for (int i = 0; i < 40; ++i) x = std::log(100.0 * x * x / tolerance);
+  for (int i = 0; i < 40; ++i) x = std::log(30.0 * x * x / tolerance);
   return x;
 }
 
@@ -40,20 +30,16 @@ Window coaxial_window(double inner_radius_nm, double outer_radius_nm, const Node
     throw std::domain_error("coaxial_window: radii must rise from a positive value");
   const double limit = largest_exponent(nodes.tolerance);
   const double gap = outer_radius_nm - inner_radius_nm;
-  const auto exponent = [&](int m, double q) {
-    return 2 * (decay(m, q * outer_radius_nm) - decay(m, q * inner_radius_nm));
-  };
   Window window;
-  const double lowest = 0.01 / std::max(1.0, outer_radius_nm);
-  window.q.first = nodes.q.index_below(lowest);
+  window.q.first = nodes.q.index_below(lowest_wave(outer_radius_nm, nodes.tolerance));
   window.q.count = nodes.q.index_above(limit / (2 * gap)) - window.q.first + 1;
   window.xi = contact_frequencies(nodes);
-  int orders = 1;
-  while (exponent(orders, nodes.q.node(window.q.first)) <= limit) ++orders;
+  int largest = 0;
   for (int j = 0; j < window.q.count; ++j) {
     const double q = nodes.q.node(window.q.first + j);
-    while (orders > 1 && exponent(orders - 1, q) > limit) --orders;
-    window.orders.push_back(orders);
+    const int m = largest_multipole(q, inner_radius_nm, outer_radius_nm, limit, largest);
+    largest = j == 0 ? m : std::min(m, largest);
+    window.orders.push_back(largest + 1);
   }
   return window;
 }
@@ -72,6 +58,7 @@ CoaxialDensity coaxial_density(const Scatterer& inside, const Scatterer& around,
     d->full.assign(frequencies, 0.0);
     d->halved.assign(frequencies, 0.0);
   }
+  density.gap_slope.derivatives = 1;
   std::vector<double> energy(frequencies), slope(frequencies);
   const int in = window.q.first - inside.window().q.first;
   const int out = window.q.first - around.window().q.first;

@@ -8,8 +8,14 @@
 namespace gapwright {
 
 namespace {
-/// What windows leave out at large wave numbers, orders and frequencies, relative to the tolerance.
-constexpr double truncation_share = 0.03;
+/// What windows leave out at either end, relative to the tolerance.
+constexpr double truncation_share = 0.1;
+/// A derivative by distance multiplies the integrand by about 2Q: the cut end weighs more by the
+/// ratio of its exponent to the mean one.
+constexpr double slope_factor = 5.0;
+
+/// F is constant below, up to a relative ξ²D²/(3ħv)² for bodies 1 nm apart.
+constexpr double lowest_frequency_eV = 1e-3;
 
 /// Accuracy of the responses, relative to the energy.
 double response_accuracy(double tolerance) {
@@ -17,11 +23,25 @@ double response_accuracy(double tolerance) {
 }
 }  // namespace
 
+double lowest_wave(double length_nm, double tolerance) {
+  // Charge waves of metallic bodies make the integrand rise as q from zero, where it is taken as
+  // constant: an error of order (q·length)².
+  return 0.003 * std::sqrt(std::min(1.0, tolerance / 1e-4)) / std::max(1.0, length_nm);
+}
+
 IndexRange contact_frequencies(const Nodes& nodes) {
   // Above the plasmons of the background F falls as ξ^-4; the cut leaves (30 eV/ξ)^3 of that.
   const double highest = 600.0 * std::pow(1e-4 / std::min(nodes.tolerance, 1e-4), 0.2);
-  const int first = nodes.xi.index_below(1e-3);
+  const int first = nodes.xi.index_below(lowest_frequency_eV);
   return {first, nodes.xi.index_above(highest) - first + 1};
+}
+
+IndexRange frequencies_at(double distance_nm, const Nodes& nodes) {
+  IndexRange range = contact_frequencies(nodes);
+  if (distance_nm <= 1.0) return range;
+  // Charge waves of length D answer below ħv/D: the lower end moves with 1/D.
+  const int first = nodes.xi.index_below(lowest_frequency_eV / distance_nm);
+  return {first, range.end() - first};
 }
 
 Estimate frequency_sum(const FrequencyDensity& density, const Nodes& nodes, IndexRange xi,
@@ -41,7 +61,8 @@ Estimate frequency_sum(const FrequencyDensity& density, const Nodes& nodes, Inde
   energy.value = sum / (2 * constants::pi);
   energy.error = (trapezoid_error(sum, halved_waves) + trapezoid_error(sum, halved_frequencies)) /
                      (2 * constants::pi) +
-                 (truncation_share * nodes.tolerance + response_accuracy(nodes.tolerance)) *
+                 ((1 + slope_factor * density.derivatives) * truncation_share * nodes.tolerance +
+                  response_accuracy(nodes.tolerance)) *
                      std::fabs(energy.value);
   return energy;
 }

@@ -23,8 +23,9 @@ PlanarEnergy planar_energy(const SheetScatterer& a, const SheetScatterer& b, dou
   if (!(spacing_nm > 0)) throw std::domain_error("planar_energy: the spacing must be positive");
   const std::size_t frequencies = std::size_t(a.xi.count);
   const AxisWeights weights = trapezoid_weights(a.nodes.q, a.wave, {});
-  FrequencyDensity energy{std::vector<double>(frequencies), std::vector<double>(frequencies)};
+  FrequencyDensity energy{std::vector<double>(frequencies), std::vector<double>(frequencies), 0};
   FrequencyDensity slope = energy;
+  slope.derivatives = 1;
   for (int j = 0; j < a.wave.count; ++j) {
     const double q = a.nodes.q.node(a.wave.first + j);
     const double decay = std::exp(-2 * q * spacing_nm);

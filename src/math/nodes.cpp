@@ -13,10 +13,10 @@ namespace {
 // equals the tolerance at the step chosen.
 constexpr double trapezoid_decay = 6.1;
 constexpr double trapezoid_scale = 20.0;
-constexpr double widest_step = 0.6;
+constexpr double widest_step = 0.55;
 
 // err(step) = squared_factor · err(2·step)² for relative errors.
-constexpr double squared_factor = 4.0;
+constexpr double squared_factor = 2.0;
 constexpr double rounding_floor = 1e-15;
 
 IndexRange united(const IndexRange& a, const IndexRange& b) {

@@ -7,9 +7,9 @@ namespace {
 
 constexpr std::size_t scatterer_bytes = std::size_t(300) << 20;
 
-// Waves of the cells of any tube: q from 0.0005 nm^-1 for the widest; at the largest round-trip
+// Waves of the cells of any tube: q down to that of a 20 nm wide tube; at the largest round-trip
 // exponent x of a gap of 0.2 nm or more, Q stays below about 4x.
-constexpr double flat_lowest_per_nm = 4e-4;
+constexpr double widest_radius_nm = 10.0;
 constexpr double flat_highest_per_exponent = 4.0;
 
 }  // namespace
@@ -54,7 +54,8 @@ const FlatResponse& TubeCache::flat(IndexRange xi) {
   const std::lock_guard lock(flat_mutex_);
   if (!flat_)
     flat_ = std::make_unique<FlatResponse>(
-        carbon_.hopping, carbon_.conditions, carbon_.nodes, xi, flat_lowest_per_nm,
+        carbon_.hopping, carbon_.conditions, carbon_.nodes, xi,
+        0.5 * lowest_wave(widest_radius_nm, carbon_.nodes.tolerance),
         flat_highest_per_exponent * largest_exponent(carbon_.nodes.tolerance));
   return *flat_;
 }

@@ -66,21 +66,27 @@ void append_panels(double from, double to, std::span<const BranchPoint> points,
                    const PanelRule& rule, LineNodes& out) {
   const Ellipse ellipse = bernstein(rule.ellipse);
   const GaussRule& gauss = gauss_legendre(rule.nodes);
-  const double margin = rule.longest * (1 + ellipse.major);
+  const double inverse_major2 = 1 / (ellipse.major * ellipse.major);
+  const double inverse_minor2 = 1 / (ellipse.minor * ellipse.minor);
+  const double behind = rule.longest * (ellipse.major - 1);
   std::size_t lowest = 0;
   double left = from;
   while (left < to) {
-    while (lowest < points.size() && points[lowest].z < left - margin) ++lowest;
+    while (lowest < points.size() && points[lowest].z < left - behind) ++lowest;
     double half = rule.longest;
     double stop = to;
-    for (std::size_t i = lowest; i < points.size() && points[i].z < left + margin; ++i) {
+    for (std::size_t i = lowest; i < points.size(); ++i) {
       const double ahead = points[i].z - left;
-      if (points[i].distance < on_line) {
+      if (ahead > (1 + ellipse.major) * half) break;
+      const double distance = points[i].distance;
+      if (distance < on_line) {
         // On the line the functions are smooth on either side: cut there, nothing else.
         if (ahead > on_line && points[i].z < stop) stop = points[i].z;
-      } else {
-        half = std::min(half, longest_half(ahead, points[i].distance, ellipse));
+        continue;
       }
+      const double offset = ahead - half;
+      if (offset * offset * inverse_major2 + distance * distance * inverse_minor2 < half * half)
+        half = longest_half(ahead, distance, ellipse);
     }
     double right = left + 2 * half;
     if (right >= stop - on_line)

@@ -43,7 +43,7 @@ FlatDirection::FlatDirection(const HoppingSet& hopping, double angle_rad, double
                              std::span<const double> xi_eV)
     : hamiltonian_(hopping, rotated_lattice(angle_rad), 0.0),
       precision_(line_precision(tolerance, hamiltonian_.nearest_neighbour_only())),
-      band_zeros_(hamiltonian_, 1.2 * precision_.panels.longest),
+      band_zeros_(hamiltonian_, precision_.panels.longest),
       xi_(xi_eV) {
   // Cell {s·b + z·ẑ}: strips along b stack by translations, so any direction ẑ has a cell.
   const auto& reciprocal = hamiltonian_.lattice().reciprocal;
@@ -129,7 +129,7 @@ void FlatDirection::strengths(double wave_per_nm, std::span<double> sums) const 
   std::vector<double> weights;
   const Cut cut = cut_for(wave_per_nm);
   const std::vector<double> positions = line_positions(wave_per_nm, cut, weights);
-  const double margin = 3 * precision_.panels.longest;
+  const double margin = 2.5 * precision_.panels.longest;
   const double prefactor = 4 * constants::coulomb_eV_nm / constants::pi;
   std::vector<BranchPoint> points, shifted;
   LineNodes nodes;

@@ -59,8 +59,9 @@ void LineIntegrator::simple_transitions(PlaneVector origin, PlaneVector wave_vec
   }
   transitions_.strength.resize(nodes.z.size());
   transitions_.energy2.resize(nodes.z.size());
-  line_kernel().transitions(bonds, nodes.z.data(), nodes.weight.data(), int(nodes.z.size()),
-                            transitions_.strength.data(), transitions_.energy2.data());
+  (single_ ? line_kernel().transitions_single : line_kernel().transitions_double)(
+      bonds, nodes.z.data(), nodes.weight.data(), int(nodes.z.size()), transitions_.strength.data(),
+      transitions_.energy2.data());
 }
 
 void LineIntegrator::general_transitions(PlaneVector origin, PlaneVector wave_vector,

@@ -23,9 +23,13 @@ struct LineTransitions {
 };
 
 struct LineKernel {
-  /// Fills strength[i], energy2[i] for the nodes z[i] with weights w[i] (T = 0, undoped).
-  void (*transitions)(const LineBonds& bonds, const double* z, const double* w, int count,
-                      double* strength, double* energy2);
+  /// Fills strength[i], energy2[i] for the nodes z[i] with weights w[i] (T = 0, undoped), phases
+  /// to 4e-13.
+  void (*transitions_single)(const LineBonds& bonds, const double* z, const double* w, int count,
+                             double* strength, double* energy2);
+  /// The same with phases to rounding.
+  void (*transitions_double)(const LineBonds& bonds, const double* z, const double* w, int count,
+                             double* strength, double* energy2);
   /// sum[x] += Σ_i strength[i]/(energy2[i] + xi2[x]), single precision in blocks of 32 nodes.
   void (*accumulate_single)(const double* strength, const double* energy2, int count,
                             const double* xi2, int frequencies, double* sum);

@@ -40,7 +40,7 @@ class TubeSum {
       : radius_(tube.radius_nm),
         hamiltonian_(tube_hamiltonian(tube, hopping)),
         precision_(line_precision(tolerance, hamiltonian_.nearest_neighbour_only())),
-        lines_(tube, hamiltonian_, 1.2 * precision_.panels.longest),
+        lines_(tube, hamiltonian_, precision_.panels.longest),
         xi_(xi) {
     for (int line = 0; line < lines_.count(); ++line)
       initial_.push_back(lines_.branch_points(line, 0));
@@ -48,36 +48,60 @@ class TubeSum {
 
   LineIntegrator integrator() const { return {hamiltonian_, precision_, xi_}; }
 
-  /// Adds factor·(4k_e/πR)∫W ΔE/(ΔE² + ξ²) of wave vector (order/R, q) to sums.
-  void add(int order, double q, double factor, LineIntegrator& integrator,
-           std::span<double> sums) const {
-    const PlaneVector wave{order / radius_, q};
-    std::vector<BranchPoint> points, shifted;
-    LineNodes nodes;
+  /// What all wave numbers of one signed order share.
+  struct Order {
+    int order;
+    struct Line {
+      int index;
+      bool whole;         ///< false: mapped on itself by k → -k - Q, half of it is enough
+      double mirror_sum;  ///< of a point and its image at q = 0
+      std::vector<BranchPoint> final_points;
+    };
+    std::vector<Line> lines;
+  };
+  Order prepare(int order) const {
+    Order prepared{order, {}};
     for (int line = 0; line < lines_.count(); ++line) {
-      // Time reversal maps k on -k - Q: half of the lines, or half of a line, is enough.
       const int image = lines_.image(line, order);
-      if (image < line) continue;
+      if (image < line) continue;  // time reversal: its image stands for it
+      prepared.lines.push_back(
+          {line, image != line, lines_.mirror_sum(line, order), lines_.branch_points(line, order)});
+    }
+    return prepared;
+  }
+
+  /// Scratch space of one thread.
+  struct Scratch {
+    std::vector<BranchPoint> initial, shifted, points;
+    LineNodes nodes;
+  };
+
+  /// Adds factor·(4k_e/πR)∫W ΔE/(ΔE² + ξ²) of wave vector (order/R, q) to sums.
+  void add(const Order& order, double q, double factor, LineIntegrator& integrator,
+           Scratch& scratch, std::span<double> sums) const {
+    const double prefactor = 4 * constants::coulomb_eV_nm / (constants::pi * radius_);
+    const double margin = 2.5 * precision_.panels.longest;
+    for (const Order::Line& line : order.lines) {
       double from = 0.0, to = lines_.period();
-      if (image == line) {
-        from = 0.5 * (lines_.mirror_sum(line, order) - q);
+      if (!line.whole) {
+        from = 0.5 * (line.mirror_sum - q);
         to = from + 0.5 * lines_.period();
       }
-      const double margin = 2.5 * precision_.panels.longest;
-      unroll(initial_[std::size_t(line)], lines_.period(), 0.0, from, to, margin, points);
-      unroll(lines_.branch_points(line, order), lines_.period(), -q, from, to, margin, shifted);
-      const auto middle = points.insert(points.end(), shifted.begin(), shifted.end());
-      std::inplace_merge(points.begin(), middle, points.end(),
-                         [](const BranchPoint& a, const BranchPoint& b) { return a.z < b.z; });
-      nodes.clear();
-      append_panels(from, to, points, precision_.panels, nodes);
-      integrator.add({line / radius_, 0.0}, wave, nodes, 2 * factor * prefactor(), sums);
+      unroll(initial_[std::size_t(line.index)], lines_.period(), 0.0, from, to, margin,
+             scratch.initial);
+      unroll(line.final_points, lines_.period(), -q, from, to, margin, scratch.shifted);
+      scratch.points.resize(scratch.initial.size() + scratch.shifted.size());
+      std::merge(scratch.initial.begin(), scratch.initial.end(), scratch.shifted.begin(),
+                 scratch.shifted.end(), scratch.points.begin(),
+                 [](const BranchPoint& a, const BranchPoint& b) { return a.z < b.z; });
+      scratch.nodes.clear();
+      append_panels(from, to, scratch.points, precision_.panels, scratch.nodes);
+      integrator.add({line.index / radius_, 0.0}, {order.order / radius_, q}, scratch.nodes,
+                     2 * factor * prefactor, sums);
     }
   }
 
  private:
-  double prefactor() const { return 4 * constants::coulomb_eV_nm / (constants::pi * radius_); }
-
   double radius_;
   SheetHamiltonian hamiltonian_;
   LinePrecision precision_;
@@ -97,26 +121,21 @@ ShellResponse tube_response(const Tube& tube, const HoppingSet& hopping,
 
   ShellResponse response(tube.radius_nm, nodes, window);
   const TubeSum sum(tube, hopping, nodes.tolerance, xi);
-  struct Cell {
-    int j, m;
-  };
-  std::vector<Cell> cells;
-  for (int j = 0; j < window.q.count; ++j)
-    for (int m = 0; m < window.orders[std::size_t(j)]; ++m) cells.push_back({j, m});
-
+  // Both signs of an order; one is enough where the tube is its own mirror image.
+  const bool chiral = tube.shape == TubeKind::chiral;
 #pragma omp parallel num_threads(inner_threads())
   {
     LineIntegrator integrator = sum.integrator();
-#pragma omp for schedule(dynamic, 4)
-    for (std::size_t c = 0; c < cells.size(); ++c) {
-      const auto [j, m] = cells[c];
-      const double q = nodes.q.node(window.q.first + j);
-      const std::span<double> out = response.cell(j, m);
-      if (m == 0 || tube.shape != TubeKind::chiral) {
-        sum.add(m, q, 1.0, integrator, out);
-      } else {
-        sum.add(m, q, 0.5, integrator, out);
-        sum.add(-m, q, 0.5, integrator, out);
+    TubeSum::Scratch scratch;
+#pragma omp for schedule(dynamic, 1)
+    for (int m = window.max_order() - 1; m >= 0; --m) {
+      const bool both = chiral && m > 0;
+      const TubeSum::Order plus = sum.prepare(m), minus = sum.prepare(both ? -m : m);
+      for (int j = 0; j < window.q.count && m < window.orders[std::size_t(j)]; ++j) {
+        const double q = nodes.q.node(window.q.first + j);
+        const std::span<double> out = response.cell(j, m);
+        sum.add(plus, q, both ? 0.5 : 1.0, integrator, scratch, out);
+        if (both) sum.add(minus, q, 0.5, integrator, scratch, out);
       }
     }
   }

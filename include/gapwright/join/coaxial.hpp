@@ -7,7 +7,7 @@
 namespace gapwright {
 
 /// Round trips that decay as e^-x are left out beyond this x: the share x²e^-x/2 of the energy is
-/// then below a two-hundredth of the tolerance.
+/// then below a sixtieth of the tolerance.
 double largest_exponent(double tolerance);
 
 /// The window of a coaxial row: cells whose round trip e^{-2(η_m(qR₂) - η_m(qR₁))} matters at the

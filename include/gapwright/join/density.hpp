@@ -13,6 +13,7 @@ namespace gapwright {
 struct FrequencyDensity {
   std::vector<double> full;
   std::vector<double> halved;
+  int derivatives = 0;  ///< by distance: each weighs the cut ends of the window more
 };
 
 /// Energy at T = 0: (1/2π)∫₀^∞ F dξ, with constant continuation below the first node and ξ^-4 above
@@ -20,7 +21,14 @@ struct FrequencyDensity {
 Estimate frequency_sum(const FrequencyDensity& density, const Nodes& nodes, IndexRange xi,
                        const Conditions& conditions);
 
+/// The lowest wave number [nm^-1] a row takes nodes from; `length_nm` is the largest length of its
+/// geometry (outer radius, distance of the axes).
+double lowest_wave(double length_nm, double tolerance);
+
 /// The frequency range every contact row uses at this tolerance.
 IndexRange contact_frequencies(const Nodes& nodes);
+/// The frequency range of a row whose bodies are this far apart: contact_frequencies up to 1 nm,
+/// wider towards small frequencies beyond.
+IndexRange frequencies_at(double distance_nm, const Nodes& nodes);
 
 }  // namespace gapwright
