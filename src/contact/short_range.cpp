@@ -1,3 +1,5 @@
+#include "shell_integrals.hpp"
+
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/contact/short_range.hpp>
 
@@ -11,44 +13,6 @@ namespace {
 
 using constants::pi;
 
-constexpr double density_per_nm2 = 1 / constants::atom_area_nm2;
-constexpr int repulsive_power = 12;
-
-void require_power(const char* function, int power) {
-  if (power < 3)
-    throw std::domain_error(fmt::format("{}: power = {}, required: >= 3", function, power));
-}
-
-// ∫ r^{-p} along an infinite line at distance ρ is c_p ρ^{1-p}: c_p = √π Γ((p-1)/2)/Γ(p/2), from
-// c_2 = π, c_3 = 2 by c_{p+2} = c_p (p-1)/p.
-double line_factor(int power) {
-  double factor = power % 2 == 0 ? pi : 2.0;
-  for (int p = power % 2 == 0 ? 2 : 3; p < power; p += 2) factor *= (p - 1.0) / p;
-  return factor;
-}
-
-// F(1-s, 1-s; 1; z) and its derivative by z, 0 <= z < 1. Terms are positive and fall as
-// k^{-2s} z^k, so the sum converges for every z < 1.
-struct Series {
-  double value = 1.0;
-  double slope = 0.0;
-};
-
-Series hypergeometric(double s, double z) {
-  constexpr double small = 1e-15;
-  Series sum;
-  double coefficient = 1.0;  // of z^k, times z^{k-1}
-  for (int k = 1;; ++k) {
-    const double ratio = (k - s) / k;
-    coefficient *= ratio * ratio;
-    sum.slope += k * coefficient;
-    coefficient *= z;
-    sum.value += coefficient;
-    // Beyond k = s the terms of both sums fall monotonically, in ratio below z.
-    if (k > s && k * coefficient <= small * (1 - z) * sum.value) return sum;
-  }
-}
-
 // Mean of ρ^{-2s} over the angle between two coaxial circles, ρ² = R₁² + R₂² - 2R₁R₂cos φ:
 // R₂^{-2s} F(s, s; 1; z), z = (R₁/R₂)². Euler's transformation (A&S 15.3.3) makes it
 // (g·S)^{1-2s} R₂^{2s-2} F(1-s, 1-s; 1; z), g = R₂ - R₁, S = R₁ + R₂. Slope by g at fixed S.
@@ -56,7 +20,7 @@ SmoothEnergy mean_inverse_power(int twice_s, double inner, double outer) {
   const double s = 0.5 * twice_s;
   const double gap = outer - inner, sum = outer + inner;
   const double quotient = inner / outer;
-  const Series series = hypergeometric(s, quotient * quotient);
+  const CircleSeries series = circle_series(s, quotient * quotient);
   const double front = std::pow(gap * sum, 1 - twice_s) * std::pow(outer, twice_s - 2);
   const double front_rate = (1 - twice_s) / gap + (s - 1) / outer;
   const double z_slope = -quotient * sum / (outer * outer);
@@ -70,7 +34,7 @@ SmoothEnergy sheets_energy(const PairFunction& pair, double spacing_nm) {
   if (!(spacing_nm > 0))
     throw std::domain_error(
         fmt::format("sheets_energy: spacing_nm = {}, required: > 0", spacing_nm));
-  const double front = density_per_nm2 * density_per_nm2 * pi;
+  const double front = carbon_density_per_nm2 * carbon_density_per_nm2 * pi;
   const auto term = [&](int power) {
     return front * 2 / (power - 2) * std::pow(spacing_nm, 2 - power);
   };
@@ -96,7 +60,7 @@ SmoothEnergy coaxial_energy(const PairFunction& pair, double inner_radius_nm,
   const double slope = repulsion * steep.slope - attraction * soft.slope;
 
   // Two circles of 2πR atoms areas each; R₁R₂ changes by (R₁ - R₂)/2 with the gap.
-  const double front = density_per_nm2 * density_per_nm2 * 4 * pi * pi;
+  const double front = carbon_density_per_nm2 * carbon_density_per_nm2 * 4 * pi * pi;
   const double product = inner_radius_nm * outer_radius_nm;
   const double product_slope = 0.5 * (inner_radius_nm - outer_radius_nm);
   return {front * product * energy, front * (product * slope + product_slope * energy)};
