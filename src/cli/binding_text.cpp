@@ -1,0 +1,109 @@
+#include "binding_text.hpp"
+
+#include "text_table.hpp"
+
+#include <cmath>
+
+#include <fmt/format.h>
+
+namespace gapwright::cli {
+namespace {
+
+constexpr int energy_decimals = 5;
+
+// "  name          value unit ± error   remark"; nothing for an empty field.
+std::string line(const std::string& name, std::optional<double> value, int decimals,
+                 const std::string& unit, std::optional<double> error = {},
+                 const std::string& remark = {}) {
+  if (!value) return {};
+  std::string text = fmt::format("  {:<20}{:>12} {}", name, fixed(value, decimals), unit);
+  if (error) text += fmt::format(" ± {}", significant(error, 2));
+  if (!remark.empty()) text += "   " + remark;
+  return text + "\n";
+}
+
+std::string body_line(const char* name, const std::string& object, const std::string& kind,
+                      double diameter_nm, double chiral_angle_deg, double band_gap_eV) {
+  return fmt::format("  {:<8}{}, {}, diameter {} nm, chiral angle {} deg, gap {} eV\n", name,
+                     object, kind, fixed(diameter_nm, 4), fixed(chiral_angle_deg, 2),
+                     fixed(band_gap_eV, 4));
+}
+
+std::string geometry_text(const Binding& row) {
+  return "geometry\n" +
+         body_line("inner", row.object_1, row.kind_1, row.diameter_1_nm, row.chiral_angle_1_deg,
+                   row.band_gap_1_eV) +
+         body_line("outer", row.object_2, row.kind_2, row.diameter_2_nm, row.chiral_angle_2_deg,
+                   row.band_gap_2_eV) +
+         line("gap", row.gap_nm, 4, "nm");
+}
+
+std::optional<double> absolute(std::optional<double> relative, std::optional<double> value) {
+  if (!relative || !value) return std::nullopt;
+  return *relative * std::abs(*value);
+}
+
+std::string energy_text(const Binding& row) {
+  std::optional<double> geometric;
+  if (row.dispersion_eV_per_nm && row.electronic_share_eV_per_nm)
+    geometric = *row.dispersion_eV_per_nm - *row.electronic_share_eV_per_nm;
+  const char* unit = "eV/nm";
+  return "energy (negative: attraction)\n" +
+         line("dispersion", row.dispersion_eV_per_nm, energy_decimals, unit,
+              absolute(row.relative_error, row.dispersion_eV_per_nm)) +
+         line("  by geometry", geometric, energy_decimals, unit, {},
+              "the same walls with the π electrons of flat graphene") +
+         line("  by electrons", row.electronic_share_eV_per_nm, energy_decimals, unit,
+              row.electronic_share_error, "what the walls' own bands change") +
+         line("contact", row.contact_eV_per_nm, energy_decimals, unit, {},
+              "target " + row.contact_target) +
+         line("total", row.energy_eV_per_nm, energy_decimals, unit, row.energy_error) +
+         line("", row.energy_mJ_per_m2, 3, "mJ/m2", {}, "of the mid radius") +
+         line("", row.energy_meV_per_atom, 4, "meV/atom", {}, "of that area");
+}
+
+std::string force_text(const Binding& row) {
+  std::string text;
+  if (row.pressure_GPa)
+    text += "pressure (negative: the walls attract)\n" +
+            line("dispersion", row.pressure_dispersion_GPa, 4, "GPa") +
+            line("total", row.pressure_GPa, 4, "GPa", row.pressure_error);
+  if (row.pull_out_force_nN)
+    text += "pulling the inner wall out\n" + line("force", row.pull_out_force_nN, 4, "nN");
+  return text;
+}
+
+std::string interfaces_text(const Binding& row) {
+  if (row.interfaces.size() < 2) return {};  // the row itself says it
+  TextTable table({{"  cut between", "", true},
+                   {"gap", "nm"},
+                   {"cut energy", "eV/nm"},
+                   {"pull-out force", "nN"}});
+  for (const Interface& cut : row.interfaces)
+    table.add({"  " + cut.inside + " and " + cut.outside, fixed(cut.gap_nm, 4),
+               fixed(cut.cut_energy_eV_per_nm, energy_decimals), fixed(cut.pull_out_force_nN, 4)});
+  return "interfaces\n" + table.text();
+}
+
+std::string beside_text(const Binding& row) {
+  return "beside it\n" + line("pair potential", row.pair_potential_eV_per_nm, energy_decimals,
+                              "eV/nm", {}, "a published estimate that knows no chirality");
+}
+
+}  // namespace
+
+std::string binding_text(const Binding& row) {
+  std::string text = fmt::format("{}@{}   {}, {} K, {}", row.object_1, row.object_2,
+                                 row.arrangement, row.temperature_K, row.medium);
+  if (row.chemical_potential_eV != 0)
+    text += fmt::format(", chemical potential {} eV", row.chemical_potential_eV);
+  text += "\n\n" + geometry_text(row) + energy_text(row) + interfaces_text(row) + force_text(row) +
+          beside_text(row) + fmt::format("status {}", status_word(row.status));
+  if (row.relative_error)
+    text +=
+        fmt::format(", relative error of the dispersion {}", significant(row.relative_error, 2));
+  if (!row.message.empty()) text += ": " + row.message;
+  return text + "\n";
+}
+
+}  // namespace gapwright::cli

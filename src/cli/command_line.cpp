@@ -1,0 +1,211 @@
+#include "command_line.hpp"
+
+#include <algorithm>
+#include <cctype>
+
+#include <CLI/CLI.hpp>
+
+namespace gapwright::cli {
+namespace {
+
+struct OptionText {
+  const char* name;
+  const char* value;  // what stands for the value in the help; empty: a flag
+  const char* help;
+};
+
+struct CommandText {
+  const char* name;
+  const char* operands;
+  const char* help;
+  std::vector<OptionText> options;
+};
+
+const std::vector<OptionText>& common_options() {
+  static const std::vector<OptionText> options = {
+      {"--json", "", "One JSON object, or one a line"},
+      {"--temperature-K", "T", "Temperature; 0, the default, is what this version computes"},
+      {"--chemical-potential-eV", "MU", "Doping, from neutrality; 0, the default, is computed"},
+      {"--hopping", "NAME", "Hopping set of the catalogue"},
+      {"--background", "NAME", "Background response of the catalogue"},
+      {"--contact-target", "NAME", "Target of the contact term in the catalogue"},
+      {"--catalogs", "DIR", "Folder of catalogues in place of the built-in ones"},
+      {"--tolerance", "X", "Relative error asked of the dispersion energy (default 1e-4)"},
+      {"--threads", "N", "Threads (default: all cores)"},
+      {"--kernel", "NAME", "Instruction set of the hot kernels: portable, avx2, avx512"},
+      {"--version", "", "Version, compiler, kernel variant, catalogue hash"},
+  };
+  return options;
+}
+
+const std::vector<CommandText>& commands() {
+  static const std::vector<CommandText> all = {
+      {"describe", "OBJECT...", "Geometry, bands and response of tubes and of graphene", {}},
+      {"bind", "A@B[@C...]", "Binding of walls in walls, inner@outer", {}},
+      {"rank",
+       "[PLAN.toml]",
+       "Every pair of a range, the strongest first; flags add to a plan or replace its keys",
+       {{"--arrangement", "WORD", "coaxial (default)"},
+        {"--diameter-nm", "LO:HI", "Diameter of either wall"},
+        {"--inner-diameter-nm", "LO:HI", "Diameter of the inner wall"},
+        {"--outer-diameter-nm", "LO:HI", "Diameter of the outer wall"},
+        {"--index", "LO:HI", "Range of the index n"},
+        {"--kind", "WORD", "any, metallic, semiconducting, armchair, zigzag, chiral"},
+        {"--inner", "TUBE", "The inner wall is this tube"},
+        {"--outer", "TUBE", "The outer wall is this tube"},
+        {"--gap-nm", "LO:HI", "Gap between the walls (default 0.3:0.4)"},
+        {"--sort", "FIELD", "Field to sort by (default energy_mJ_per_m2)"},
+        {"--top", "N", "List the first N; --csv always holds all"},
+        {"--csv", "FILE", "All rows with all fields for a spreadsheet; - for standard output"},
+        {"--store", "FILE.db", "Keep rows as they are computed; the same command goes on"},
+        {"--count", "", "Pairs, estimated time and disk; computes nothing"},
+        {"--pair", "A@B", "Recompute one row of the store and compare"},
+        {"--time-limit", "SECONDS", "Stop after this time; the same command goes on"},
+        {"--part", "K/N", "Only part K of N of the pairs"}}},
+      {"check", "", "Recompute published values and print ours beside theirs", {}},
+  };
+  return all;
+}
+
+std::vector<std::string> command_names() {
+  std::vector<std::string> names;
+  for (const CommandText& command : commands()) names.emplace_back(command.name);
+  return names;
+}
+
+void add_options(CLI::App& app, const std::vector<OptionText>& options, const char* group) {
+  for (const OptionText& option : options) {
+    if (*option.value == '\0')
+      app.add_flag(option.name, option.help)->group(group);
+    else
+      app.add_option(option.name, option.help)
+          ->type_name(option.value)
+          ->multi_option_policy(CLI::MultiOptionPolicy::TakeAll)
+          ->group(group);
+  }
+}
+
+// Operands are no business of the parser, so the usage line is ours.
+class HelpText : public CLI::Formatter {
+ public:
+  std::string make_usage(const CLI::App* app, std::string) const override {
+    for (const CommandText& command : commands())
+      if (app->get_name() == command.name)
+        return std::string("Usage: gapwright ") + command.name + " " + command.operands +
+               (*command.operands == '\0' ? "" : " ") + "[OPTIONS]\n";
+    return "Usage: gapwright COMMAND [OPTIONS]\n";
+  }
+};
+
+void describe_app(CLI::App& app) {
+  auto help = std::make_shared<HelpText>();
+  help->label("SUBCOMMANDS", "Commands");
+  help->label("SUBCOMMAND", "COMMAND");
+  app.formatter(help);
+  app.set_help_flag("--help,-h", "This text");
+  add_options(app,
+              {{"--version", "", "Version, compiler, kernel variant, catalogue hash"},
+               {"--json", "", "With --version: one JSON object"}},
+              "Options");
+  app.allow_extras();
+  for (const CommandText& command : commands()) {
+    CLI::App* sub = app.add_subcommand(command.name, command.help);
+    sub->set_help_flag("--help,-h", "This text");
+    sub->allow_extras();
+    add_options(*sub, command.options, "Options of this command");
+    add_options(*sub, common_options(), "Options of every command");
+  }
+}
+
+[[noreturn]] void refuse_option(const CLI::App& app, const std::string& typed) {
+  const std::string name = typed.substr(0, typed.find('='));
+  std::vector<std::string> names;
+  for (const CLI::Option* option : app.get_options())
+    if (!option->get_lnames().empty()) names.push_back("--" + option->get_lnames().front());
+  throw InputError({"unknown option '" + name + "'",
+                    app.get_parent() ? app.get_name() : std::string(),
+                    {},
+                    "one of " + joined(names),
+                    nearest_word(name, names)});
+}
+
+bool looks_like_option(const std::string& word) {
+  return word.size() > 1 && word[0] == '-' && !std::isdigit(static_cast<unsigned char>(word[1]));
+}
+
+// Everything that no option took is an operand, unless it looks like an option. The parser leaves
+// what follows "--" with the root, whatever it looks like.
+std::vector<std::string> operands_of(const CLI::App& app) {
+  std::vector<std::string> operands = app.remaining();
+  for (const std::string& word : operands)
+    if (looks_like_option(word)) refuse_option(app, word);
+  if (const CLI::App* root = app.get_parent())
+    for (const std::string& word : root->remaining()) operands.push_back(word);
+  return operands;
+}
+
+std::string value_of(const CLI::Option& option, const std::string& name) {
+  const std::vector<std::string>& given = option.results();
+  if (given.size() > 1) throw InputError({"given more than once", name, {}, "one value", {}});
+  const std::string value = given.empty() ? std::string() : given.front();
+  if (value.empty() || value.starts_with("--"))
+    throw InputError({"has no value", name, {}, "a value: " + option.get_type_name(), {}});
+  return value;
+}
+
+Words words_of(const CLI::App& app) {
+  Words words;
+  words.command = app.get_name();
+  words.operands = operands_of(app);
+  for (const CLI::Option* option : app.get_options()) {
+    if (option->count() == 0 || option->get_lnames().empty()) continue;
+    const std::string name = "--" + option->get_lnames().front();
+    if (option->get_expected_max() == 0)
+      words.flags.push_back(name);
+    else
+      words.values[name] = value_of(*option, name);
+  }
+  return words;
+}
+
+void require_known_command(const std::string& word) {
+  const auto names = command_names();
+  if (std::find(names.begin(), names.end(), word) != names.end()) return;
+  throw InputError({"unknown command '" + word + "'",
+                    {},
+                    {},
+                    "one of " + joined(names),
+                    nearest_word(word, names)});
+}
+
+}  // namespace
+
+Request read_command_line(int argc, const char* const* argv) {
+  if (argc < 2)
+    throw InputError(
+        {"no command", {}, {}, "one of " + joined(command_names()) + "; or --help", {}});
+  if (argv[1][0] != '-') require_known_command(argv[1]);
+  CLI::App app("Attraction of carbon nanotubes from their electronic structure.", "gapwright");
+  describe_app(app);
+  try {
+    app.parse(argc, argv);
+  } catch (const CLI::CallForHelp&) {
+    const auto chosen = app.get_subcommands();
+    return {{}, chosen.empty() ? app.help() : chosen.front()->help()};
+  } catch (const CLI::ArgumentMismatch& error) {
+    const std::string message = error.what();
+    throw InputError({"has no value", message.substr(0, message.find(':')), {}, "a value", {}});
+  } catch (const CLI::ParseError& error) {
+    throw InputError({error.what(), {}, {}, "a command line as in gapwright --help", {}});
+  }
+  const auto chosen = app.get_subcommands();
+  if (chosen.size() > 1)
+    throw InputError({"two commands, " + chosen[0]->get_name() + " and " + chosen[1]->get_name(),
+                      {},
+                      {},
+                      "one command",
+                      {}});
+  return {words_of(chosen.empty() ? app : *chosen.front()), {}};
+}
+
+}  // namespace gapwright::cli

@@ -1,0 +1,100 @@
+#include "rank_plan.hpp"
+
+#include "setup.hpp"
+
+#include <gapwright/sweep/ranking.hpp>
+
+#include <algorithm>
+#include <array>
+#include <charconv>
+#include <limits>
+
+#include <fmt/format.h>
+
+namespace gapwright::cli {
+namespace {
+
+constexpr std::array selecting = {
+    "--diameter-nm", "--inner-diameter-nm", "--outer-diameter-nm", "--index", "--inner", "--outer"};
+
+void apply_interval(const Words& words, const std::string& option, const NumberRange& range,
+                    std::optional<Interval>& target) {
+  if (const auto bounds = words.interval(option, range))
+    target = Interval{(*bounds)[0], (*bounds)[1]};
+}
+
+void apply_flags(const Words& words, Plan& plan) {
+  const NumberRange diameters{min_diameter_nm, max_diameter_nm, "nm"};
+  if (const auto word = words.text("--arrangement"))
+    plan.arrangement = at_option("--arrangement", [&] { return parse_arrangement(*word); });
+  apply_interval(words, "--diameter-nm", diameters, plan.tubes.diameter_nm);
+  if (const auto bounds = words.interval("--index", {1, max_index, ""}))
+    plan.tubes.index =
+        at_option("--index", [&] { return index_interval((*bounds)[0], (*bounds)[1]); });
+  if (const auto word = words.text("--kind"))
+    plan.tubes.kind = at_option("--kind", [&] { return parse_kind(*word); });
+  apply_interval(words, "--inner-diameter-nm", diameters, plan.inner_diameter_nm);
+  apply_interval(words, "--outer-diameter-nm", diameters, plan.outer_diameter_nm);
+  if (const auto label = words.text("--inner"))
+    plan.inner = parse_single_tube(*label, "--inner", plan.notes);
+  if (const auto label = words.text("--outer"))
+    plan.outer = parse_single_tube(*label, "--outer", plan.notes);
+  if (const auto window = words.interval("--gap-nm", {min_gap_nm, max_gap_nm, "nm"}))
+    plan.gap_nm = {(*window)[0], (*window)[1]};
+  if (const auto field = words.text("--sort"))
+    plan.sort = at_option("--sort", [&] { return order_of(*field).field; });
+  plan.top = words.integer("--top", 1, std::numeric_limits<int>::max()).value_or(plan.top);
+}
+
+// "K/N", 1 <= K <= N.
+void read_part(const Words& words, RankRequest& request) {
+  const auto typed = words.text("--part");
+  if (!typed) return;
+  const char* end = typed->data() + typed->size();
+  const auto first = std::from_chars(typed->data(), end, request.part);
+  const bool slash = first.ec == std::errc() && first.ptr != end && *first.ptr == '/';
+  const auto second = slash ? std::from_chars(first.ptr + 1, end, request.parts) : first;
+  if (!slash || second.ec != std::errc() || second.ptr != end || request.part < 1 ||
+      request.part > request.parts)
+    throw InputError(
+        {"'" + *typed + "' is no part", "--part", {}, "K/N with 1 <= K <= N, such as 2/4", {}});
+}
+
+Plan read_base_plan(const Words& words, const Catalogs& catalogs) {
+  if (words.operands.size() > 1)
+    throw InputError({"more than one plan: " + joined(words.operands),
+                      "rank",
+                      {},
+                      "one plan file, or flags",
+                      {}});
+  return words.operands.empty() ? Plan{} : read_plan(words.operands.front(), catalogs);
+}
+
+}  // namespace
+
+RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
+  RankRequest request;
+  request.plan = read_base_plan(words, catalogs);
+  apply_flags(words, request.plan);
+  request.plan.settings = read_settings(words, catalogs, request.plan.settings);
+  if (const auto file = words.text("--csv")) request.csv = *file;
+  if (const auto file = words.text("--store")) request.store = *file;
+  request.pair = words.text("--pair").value_or("");
+  request.time_limit_s = words.number("--time-limit", {1e-3, 1e9, "s"}).value_or(0.0);
+  read_part(words, request);
+  request.threads = thread_count(words);
+  request.json = words.flag("--json");
+  request.count = words.flag("--count");
+  const bool selected = std::any_of(selecting.begin(), selecting.end(),
+                                    [&](const char* option) { return words.has(option); });
+  if (words.operands.empty() && !selected && request.pair.empty())
+    throw InputError({"nothing says which tubes to take",
+                      "rank",
+                      {},
+                      "a plan file, or one of " +
+                          joined(std::vector<std::string>(selecting.begin(), selecting.end())),
+                      {}});
+  return request;
+}
+
+}  // namespace gapwright::cli

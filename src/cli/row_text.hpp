@@ -1,0 +1,24 @@
+// Rows as JSON and CSV: numbers so that reading gives the same bits back.
+#pragma once
+
+#include <gapwright/pair/binding.hpp>
+#include <gapwright/sweep/ranking.hpp>
+
+#include <string>
+#include <vector>
+
+#include <nlohmann/json.hpp>
+
+namespace gapwright::cli {
+
+using Json = nlohmann::ordered_json;
+
+/// All fields, null where empty; walls in walls add `interfaces`, a failure adds `message`.
+Json row_json(const Binding& row);
+/// rank, all fields, rank_spread.
+Json ranked_json(const RankedRow& row);
+
+/// Comment lines, each led by "# ", a header, and a line a row: rank, all fields, rank_spread.
+std::string ranked_csv(const std::vector<RankedRow>& rows, const std::string& comment);
+
+}  // namespace gapwright::cli
