@@ -1,0 +1,10 @@
+#!/bin/sh
+# Builds the benchmarks (Release) and prints their table.
+# Usage: sh tests/bench/run.sh [BUILD_FOLDER]
+set -eu
+root=$(cd "$(dirname "$0")/../.." && pwd)
+build=${1:-"$root/build/bench"}
+cmake -S "$root" -B "$build" -G Ninja -DCMAKE_BUILD_TYPE=Release -DGAPWRIGHT_BENCH=ON \
+  -DGAPWRIGHT_TESTS=OFF >&2
+cmake --build "$build" --target bench_coaxial >&2
+exec "$build/tests/bench/bench_coaxial" "$root/examples/double-wall.toml"
