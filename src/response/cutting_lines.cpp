@@ -31,9 +31,12 @@ double longest_half(double ahead, double distance, const Ellipse& e) {
 
 void append_gauss(double from, double to, const GaussRule& gauss, LineNodes& out) {
   const double centre = 0.5 * (from + to), half = 0.5 * (to - from);
-  for (std::size_t i = 0; i < gauss.nodes.size(); ++i) {
-    out.z.push_back(centre + half * gauss.nodes[i]);
-    out.weight.push_back(half * gauss.weights[i]);
+  const std::size_t at = out.z.size(), count = gauss.nodes.size();
+  out.z.resize(at + count);
+  out.weight.resize(at + count);
+  for (std::size_t i = 0; i < count; ++i) {
+    out.z[at + i] = centre + half * gauss.nodes[i];
+    out.weight[at + i] = half * gauss.weights[i];
   }
 }
 

@@ -96,16 +96,31 @@ void accumulate(const double* strength, const double* energy2, int count, const 
       const int stop = start + block < count ? start + block : count;
       Vector acc[group] = {};
       if (used >= group) {
-        for (int i = start; i < stop; ++i) {
+        int i = start;
+        for (; i + 1 < stop; i += 2) {
+          const Vector a = Vector{} + Real(strength[i]), c = Vector{} + Real(strength[i + 1]);
+          const Vector b = Vector{} + Real(energy2[i]), d = Vector{} + Real(energy2[i + 1]);
+          for (int v = 0; v < group; ++v) {
+            const Vector p = b + x[v], q = d + x[v];
+            acc[v] += (a * q + c * p) / (p * q);
+          }
+        }
+        for (; i < stop; ++i) {
           const Vector a = Vector{} + Real(strength[i]);
           const Vector b = Vector{} + Real(energy2[i]);
-          acc[0] += a / (b + x[0]);
-          acc[1] += a / (b + x[1]);
-          acc[2] += a / (b + x[2]);
-          acc[3] += a / (b + x[3]);
+          for (int v = 0; v < group; ++v) acc[v] += a / (b + x[v]);
         }
       } else {
-        for (int i = start; i < stop; ++i) {
+        int i = start;
+        for (; i + 1 < stop; i += 2) {
+          const Vector a = Vector{} + Real(strength[i]), c = Vector{} + Real(strength[i + 1]);
+          const Vector b = Vector{} + Real(energy2[i]), d = Vector{} + Real(energy2[i + 1]);
+          for (int v = 0; v < used; ++v) {
+            const Vector p = b + x[v], q = d + x[v];
+            acc[v] += (a * q + c * p) / (p * q);
+          }
+        }
+        for (; i < stop; ++i) {
           const Vector a = Vector{} + Real(strength[i]);
           const Vector b = Vector{} + Real(energy2[i]);
           for (int v = 0; v < used; ++v) acc[v] += a / (b + x[v]);

@@ -127,7 +127,7 @@ void bench_flat_table() {
 
 Placement usual_pair() {
   Placement placement;
-  placement.walls = std::get<TubeObject>(parse_label("5,5@10,10").object);
+  placement.first = parse_label("5,5@10,10").object;
   return placement;
 }
 
@@ -140,7 +140,7 @@ double exact_dispersion() {
 /// Everything after the responses: four scatterers, energy with slope, flat energy, contact.
 void bench_pair_from_responses(double exact) {
   const Placement pair = usual_pair();
-  const Tube &inner = pair.walls.walls[0], &outer = pair.walls.walls[1];
+  const Tube &inner = tubes_of(pair.first).walls[0], &outer = tubes_of(pair.first).walls[1];
   const Nodes nodes = make_nodes(tolerance);
   const Window window = coaxial_window(inner.radius_nm, outer.radius_nm, nodes);
   const Background& background = Catalogs::built_in().background();

@@ -38,7 +38,7 @@ std::size_t line_nodes(const Tube& tube, const HoppingSet& hopping, const Nodes&
   const SheetHamiltonian hamiltonian = tube_hamiltonian(tube, hopping);
   const PanelRule rule =
       line_precision(nodes.tolerance, hamiltonian.nearest_neighbour_only()).panels;
-  const HelicalLines lines(tube, hamiltonian, 1.2 * rule.longest);
+  const HelicalLines lines(tube, hamiltonian, rule.longest);
   std::size_t count = 0;
   for (int j = 0; j < window.q.count; ++j) {
     const double q = nodes.q.node(window.q.first + j);

@@ -16,7 +16,9 @@ namespace gapwright {
 /// at the frequencies of the shared lattice.
 class FlatResponse {
  public:
-  /// Q from wave_min_nm to wave_max_nm [nm^-1]. Relative accuracy 2e-6 (1e-9 below tolerance 1e-5).
+  /// Q from wave_min to wave_max. Relative accuracy 1e-6 below Q = 8 nm^-1, 1e-4 at 13 and 2e-3 at
+  /// 16 nm^-1, where umklapp sets in and e^{-2Qd} leaves nothing of it; 1e-7 below 10 nm^-1 at a
+  /// tolerance under 1e-5.
   FlatResponse(const HoppingSet& hopping, const Conditions& conditions, const Nodes& nodes,
                IndexRange xi, double wave_min_per_nm, double wave_max_per_nm);
 

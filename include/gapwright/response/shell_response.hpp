@@ -35,7 +35,7 @@ class ShellResponse {
 /// Response of a tube on the window, from its own bands. T = 0, undoped: every cell is an integral
 /// over the helical cutting lines with Gauss panels that keep all branch points outside the
 /// Bernstein ellipse ρ = 2.4. Relative accuracy 1e-6 (3e-5 at single nodes) from 1e-5 up (single
-/// precision), else 1e-9. Works in parallel over cells with OpenMP unless called from a task.
+/// precision), else 5e-8. Works in parallel over cells with OpenMP unless called from a task.
 /// A value at a node does not depend on the window it is computed with.
 ShellResponse tube_response(const Tube& tube, const HoppingSet& hopping,
                             const Conditions& conditions, const Nodes& nodes, const Window& window);
