@@ -23,7 +23,8 @@ std::string line(const std::string& name, std::optional<double> value, int decim
 }
 
 std::string body_line(const char* name, const std::string& object, const std::string& kind,
-                      double diameter_nm, double chiral_angle_deg, double band_gap_eV) {
+                      std::optional<double> diameter_nm, std::optional<double> chiral_angle_deg,
+                      std::optional<double> band_gap_eV) {
   return fmt::format("  {:<8}{}, {}, diameter {} nm, chiral angle {} deg, gap {} eV\n", name,
                      object, kind, fixed(diameter_nm, 4), fixed(chiral_angle_deg, 2),
                      fixed(band_gap_eV, 4));

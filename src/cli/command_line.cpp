@@ -147,7 +147,7 @@ std::vector<std::string> operands_of(const CLI::App& app) {
 std::string value_of(const CLI::Option& option, const std::string& name) {
   const std::vector<std::string>& given = option.results();
   if (given.size() > 1) throw InputError({"given more than once", name, {}, "one value", {}});
-  const std::string value = given.empty() ? std::string() : given.front();
+  std::string value = given.empty() ? std::string() : given.front();
   if (value.empty() || value.starts_with("--"))
     throw InputError({"has no value", name, {}, "a value: " + option.get_type_name(), {}});
   return value;

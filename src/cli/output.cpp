@@ -3,7 +3,7 @@
 #include <gapwright/catalog/input_error.hpp>
 
 #include <cerrno>
-#include <cstring>
+#include <system_error>
 #include <utility>
 
 #include <fcntl.h>
@@ -16,7 +16,7 @@ namespace {
 namespace fs = std::filesystem;
 
 InputError cannot_write(const std::string& where, int error) {
-  return InputError({std::string("cannot be written: ") + std::strerror(error),
+  return InputError({std::string("cannot be written: ") + std::generic_category().message(error),
                      where,
                      {},
                      "a place with space that may be written to",

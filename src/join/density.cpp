@@ -39,8 +39,10 @@ IndexRange contact_frequencies(const Nodes& nodes) {
 IndexRange frequencies_at(double distance_nm, const Nodes& nodes) {
   IndexRange range = contact_frequencies(nodes);
   if (distance_nm <= 1.0) return range;
-  // Charge waves of length D answer below ħv/D: the lower end moves with 1/D.
-  const int first = nodes.xi.index_below(lowest_frequency_eV / distance_nm);
+  // Charge waves of length D answer below ħv/D: the lower end moves with 1/D, in decades, so that
+  // rows at many distances share few ranges.
+  const double decade = std::pow(10.0, std::ceil(std::log10(distance_nm) - 1e-9));
+  const int first = nodes.xi.index_below(lowest_frequency_eV / decade);
   return {first, range.end() - first};
 }
 

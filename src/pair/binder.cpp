@@ -1,11 +1,13 @@
 #include "coaxial_row.hpp"
 #include "contact_terms.hpp"
+#include "parallel_row.hpp"
 #include "tube_cache.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
 #include <gapwright/pair/binder.hpp>
 
 #include <cmath>
+#include <stdexcept>
 
 #include <fmt/format.h>
 
@@ -29,6 +31,37 @@ Settings checked(const Catalogs& catalogs, Settings settings) {
                       .expected = "1e-8 to 1e-2",
                       .nearest = settings.tolerance > 1e-2 ? "1e-2" : "1e-8"});
   return settings;
+}
+
+/// The grids carry bodies beside each other up to here.
+constexpr double farthest_gap_nm = 1e4;
+
+/// Throws InputError unless the bodies fit the arrangement.
+void check(const Placement& placement) {
+  const TubeObject& first = tubes_of(placement.first);
+  if (placement.arrangement == Arrangement::coaxial) {
+    if (first.walls.size() < 2)
+      throw InputError({.what = label_of(first) + " has one wall",
+                        .where = {},
+                        .excerpt = {},
+                        .expected = "two or more coaxial walls, inner@outer",
+                        .nearest = {}});
+    return;
+  }
+  if (!placement.second)
+    throw InputError({.what = label_of(first) + " has nothing beside it",
+                      .where = {},
+                      .excerpt = {},
+                      .expected = "two objects",
+                      .nearest = {}});
+  tubes_of(*placement.second);
+  if (placement.gap_nm &&
+      !(*placement.gap_nm >= min_gap_nm && *placement.gap_nm <= farthest_gap_nm))
+    throw InputError({.what = fmt::format("a gap of {} nm is out of range", *placement.gap_nm),
+                      .where = "gap_nm",
+                      .excerpt = {},
+                      .expected = fmt::format("{} to {} nm", min_gap_nm, farthest_gap_nm),
+                      .nearest = *placement.gap_nm > farthest_gap_nm ? "10000" : "0.2"});
 }
 
 std::string kind_of(const Tube& tube) {
@@ -65,7 +98,11 @@ const Catalogs& Binder::catalogs() const {
 }
 
 void Binder::announce(const std::vector<Placement>& rows) const {
-  for (const Placement& row : rows) announce_coaxial(row.walls, impl_->carbon, impl_->cache);
+  for (const Placement& row : rows)
+    if (row.arrangement == Arrangement::coaxial)
+      announce_coaxial(tubes_of(row.first), impl_->carbon, impl_->cache);
+    else
+      announce_parallel(row, impl_->carbon, impl_->cache);
 }
 
 void Binder::warm(const Tube& tube) const {
@@ -73,39 +110,51 @@ void Binder::warm(const Tube& tube) const {
 }
 
 Binding Binder::bind(const Placement& placement) const {
-  const TubeObject& object = placement.walls;
-  if (object.walls.size() < 2)
-    throw InputError({.what = label_of(object) + " has one wall",
-                      .where = {},
-                      .excerpt = {},
-                      .expected = "two or more coaxial walls, inner@outer",
-                      .nearest = {}});
+  const bool coaxial = placement.arrangement == Arrangement::coaxial;
+  check(placement);
+  const TubeObject& object = tubes_of(placement.first);
+  const TubeObject first =
+      coaxial ? TubeObject{{object.walls.begin(), object.walls.end() - 1}} : object;
+  const TubeObject second =
+      coaxial ? TubeObject{{object.walls.back()}} : tubes_of(*placement.second);
+
   Binding row;
-  const TubeObject inside{{object.walls.begin(), object.walls.end() - 1}};
-  const Tube &first = inside.walls.back(), &second = object.walls.back();
-  row.object_1 = label_of(inside);
-  row.object_2 = label_of(TubeObject{{second}});
-  row.kind_1 = kind_of(first);
-  row.kind_2 = kind_of(second);
-  row.diameter_1_nm = first.diameter_nm();
-  row.diameter_2_nm = second.diameter_nm();
-  row.chiral_angle_1_deg = first.chiral_angle_deg();
-  row.chiral_angle_2_deg = second.chiral_angle_deg();
-  row.band_gap_1_eV = impl_->cache.gaps(first).band_gap_eV;
-  row.band_gap_2_eV = impl_->cache.gaps(second).band_gap_eV;
+  row.object_1 = label_of(first);
+  row.object_2 = label_of(second);
+  // Of several walls, the outermost one stands for the body.
+  const Tube &one = first.walls.back(), &other = second.walls.back();
+  row.kind_1 = kind_of(one);
+  row.kind_2 = kind_of(other);
+  row.diameter_1_nm = one.diameter_nm();
+  row.diameter_2_nm = other.diameter_nm();
+  row.chiral_angle_1_deg = one.chiral_angle_deg();
+  row.chiral_angle_2_deg = other.chiral_angle_deg();
+  row.band_gap_1_eV = impl_->cache.gaps(one).band_gap_eV;
+  row.band_gap_2_eV = impl_->cache.gaps(other).band_gap_eV;
   row.arrangement = arrangement_word(placement.arrangement);
   row.temperature_K = impl_->settings.conditions.temperature_K;
   row.chemical_potential_eV = impl_->settings.conditions.chemical_potential_eV;
   row.medium = impl_->settings.conditions.medium;
   row.contact_target = impl_->settings.contact_target;
-  bind_coaxial(object, impl_->carbon, impl_->cache,
-               impl_->contacts.term(impl_->settings.contact_target), row);
+  const ContactTerm& contact = impl_->contacts.term(impl_->settings.contact_target);
+  if (coaxial)
+    bind_coaxial(object, impl_->carbon, impl_->cache, contact, row);
+  else
+    bind_parallel(placement, impl_->carbon, impl_->cache, contact, row);
   return row;
 }
 
 double Binder::contact_eV_per_nm(const Placement& placement,
                                  const std::string& contact_target) const {
-  return coaxial_contact(placement.walls, impl_->contacts.term(contact_target).nominal);
+  const PairFunction pair = impl_->contacts.term(contact_target).nominal;
+  if (placement.arrangement == Arrangement::coaxial)
+    return coaxial_contact(tubes_of(placement.first), pair);
+  check(placement);
+  if (!placement.gap_nm)
+    throw std::invalid_argument("Binder::contact_eV_per_nm: a gap is required");
+  return parallel_contact(tubes_of(placement.first), tubes_of(*placement.second), pair,
+                          *placement.gap_nm)
+      .energy;
 }
 
 PairFunction Binder::contact_term(const std::string& contact_target) const {

@@ -86,13 +86,14 @@ class Displacement {
 }  // namespace
 
 double coaxial_equilibrium_gap_nm(const Binder& binder, const Placement& placement) {
-  if (placement.walls.walls.size() != 2)
-    throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.walls) +
+  if (tubes_of(placement.first).walls.size() != 2)
+    throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.first) +
                             ", required two walls");
-  const Displacement pair(binder, placement.walls.walls[0], placement.walls.walls[1]);
+  const Displacement pair(binder, tubes_of(placement.first).walls[0],
+                          tubes_of(placement.first).walls[1]);
   double low = least_gap_nm, high = largest_gap_nm;
   if (!(pair.slope(low) < 0) || !(pair.slope(high) > 0))
-    throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.walls) +
+    throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.first) +
                             ", required a minimum within 0.28 … 0.45 nm");
   while (high - low > 1e-6) {
     const double middle = 0.5 * (low + high);

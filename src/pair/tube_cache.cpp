@@ -14,25 +14,27 @@ constexpr double flat_highest_per_exponent = 4.0;
 
 }  // namespace
 
-TubeCache::Entry& TubeCache::entry(const Tube& tube) {
+TubeCache::Entry& TubeCache::entry(const Tube& tube, int xi_first) {
   const std::lock_guard lock(entries_mutex_);
-  auto& slot = entries_[tube.chirality];
+  auto& slot = entries_[{tube.chirality, xi_first}];
   if (!slot) slot = std::make_unique<Entry>();
   return *slot;
 }
 
 void TubeCache::announce(const Tube& tube, const Window& window) {
-  Entry& e = entry(tube);
+  Entry& e = entry(tube, window.xi.first);
   const std::lock_guard lock(e.mutex);
   e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
 }
 
 void TubeCache::warm(const Tube& tube) {
-  response(tube, {});
+  Window nothing;
+  nothing.xi = contact_frequencies(carbon_.nodes);
+  response(tube, nothing);
 }
 
 std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const Window& window) {
-  Entry& e = entry(tube);
+  Entry& e = entry(tube, window.xi.first);
   const std::lock_guard lock(e.mutex);
   if (e.response && e.response->window().covers(window)) return e.response;
   if (window.q.count > 0)
@@ -44,20 +46,27 @@ std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const
 }
 
 TubeGaps TubeCache::gaps(const Tube& tube) {
-  Entry& e = entry(tube);
-  const std::lock_guard lock(e.mutex);
-  if (!e.gaps) e.gaps = std::make_unique<TubeGaps>(tube_gaps(tube, carbon_.hopping));
-  return *e.gaps;
+  {
+    const std::lock_guard lock(entries_mutex_);
+    if (const auto found = gaps_.find(tube.chirality); found != gaps_.end()) return found->second;
+  }
+  const TubeGaps gaps = tube_gaps(tube, carbon_.hopping);
+  const std::lock_guard lock(entries_mutex_);
+  return gaps_.emplace(tube.chirality, gaps).first->second;
 }
 
 const FlatResponse& TubeCache::flat(IndexRange xi) {
   const std::lock_guard lock(flat_mutex_);
-  if (!flat_)
-    flat_ = std::make_unique<FlatResponse>(
+  auto& flat = flat_[xi.first];
+  // Ranges towards small frequencies are those of far bodies, whose waves are as much longer.
+  const Nodes& nodes = carbon_.nodes;
+  const double reach = nodes.xi.node(xi.first) / nodes.xi.node(contact_frequencies(nodes).first);
+  if (!flat)
+    flat = std::make_unique<FlatResponse>(
         carbon_.hopping, carbon_.conditions, carbon_.nodes, xi,
-        0.5 * lowest_wave(widest_radius_nm, carbon_.nodes.tolerance),
+        0.5 * lowest_wave(widest_radius_nm, carbon_.nodes.tolerance) * reach,
         flat_highest_per_exponent * largest_exponent(carbon_.nodes.tolerance));
-  return *flat_;
+  return *flat;
 }
 
 std::shared_ptr<const Scatterer> TubeCache::kept(const Key& key, const Window& window) {
@@ -88,7 +97,7 @@ void TubeCache::keep(const Key& key, std::shared_ptr<const Scatterer> scatterer)
 
 std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel channel,
                                                       Electrons electrons, const Window& window) {
-  const Key key{tube.chirality, channel, electrons};
+  const Key key{{tube.chirality, window.xi.first}, channel, electrons};
   if (auto found = kept(key, window)) return found;
   const auto own = response(tube, window);
   const Window& whole = own->window();

@@ -33,7 +33,7 @@ class TubeCache {
 
   /// Announces that the tube will be asked for this window.
   void announce(const Tube& tube, const Window& window);
-  /// Computes the response now, if it is not there.
+  /// Computes the response of contact rows now, if it is announced and not there.
   void warm(const Tube& tube);
 
   /// A scatterer whose window covers the one given.
@@ -41,7 +41,7 @@ class TubeCache {
                                              const Window& window);
   TubeGaps gaps(const Tube& tube);
 
-  /// The flat sheet's response on waves that any tube's cells need.
+  /// The flat sheet's response on waves that any tube's cells need at these frequencies.
   const FlatResponse& flat(IndexRange xi);
 
  private:
@@ -49,28 +49,30 @@ class TubeCache {
     std::mutex mutex;
     Window announced;
     std::shared_ptr<const ShellResponse> response;
-    std::unique_ptr<TubeGaps> gaps;
   };
-  using Key = std::tuple<Chirality, Channel, Electrons>;
+  // Rows of one frequency range share responses; the range's first index stands for it.
+  using EntryKey = std::pair<Chirality, int>;
+  using Key = std::tuple<EntryKey, Channel, Electrons>;
   struct Kept {
     Key key;
     std::shared_ptr<const Scatterer> scatterer;
   };
 
-  Entry& entry(const Tube& tube);
+  Entry& entry(const Tube& tube, int xi_first);
   std::shared_ptr<const ShellResponse> response(const Tube& tube, const Window& window);
   std::shared_ptr<const Scatterer> kept(const Key& key, const Window& window);
   void keep(const Key& key, std::shared_ptr<const Scatterer> scatterer);
 
   const Carbon& carbon_;
   std::mutex entries_mutex_;
-  std::map<Chirality, std::unique_ptr<Entry>> entries_;
+  std::map<EntryKey, std::unique_ptr<Entry>> entries_;
+  std::map<Chirality, TubeGaps> gaps_;
   std::mutex kept_mutex_;
   std::list<Kept> kept_;  // most recent first
   std::map<Key, std::list<Kept>::iterator> kept_index_;
   std::size_t kept_bytes_ = 0;
   std::mutex flat_mutex_;
-  std::unique_ptr<FlatResponse> flat_;
+  std::map<int, std::unique_ptr<FlatResponse>> flat_;
 };
 
 }  // namespace gapwright

@@ -39,6 +39,12 @@ std::vector<std::string> names_of(const std::vector<Entry>& entries) {
   return names;
 }
 
+void read_tube(const TomlReader& reader, const std::string& key, Plan& plan,
+               std::optional<Tube>& place) {
+  if (const auto label = reader.optional_text(key))
+    place = at_key(reader, key, [&] { return parse_single_tube(*label, key, plan.notes); });
+}
+
 void read_tubes(const TomlReader& reader, Plan& plan) {
   if (const auto word = reader.optional_text("arrangement"))
     plan.arrangement = at_key(reader, "arrangement", [&] { return parse_arrangement(*word); });
@@ -50,9 +56,8 @@ void read_tubes(const TomlReader& reader, Plan& plan) {
     plan.tubes.kind = at_key(reader, "kind", [&] { return parse_kind(*word); });
   plan.inner_diameter_nm = interval(reader, "inner_diameter_nm", diameter_range);
   plan.outer_diameter_nm = interval(reader, "outer_diameter_nm", diameter_range);
-  for (auto [key, place] : {std::pair{"inner", &plan.inner}, std::pair{"outer", &plan.outer}})
-    if (const auto label = reader.optional_text(key))
-      *place = at_key(reader, key, [&] { return parse_single_tube(*label, key, plan.notes); });
+  read_tube(reader, "inner", plan, plan.inner);
+  read_tube(reader, "outer", plan, plan.outer);
   if (const auto window = interval(reader, "gap_nm", gap_range)) plan.gap_nm = *window;
 }
 

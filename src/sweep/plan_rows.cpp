@@ -102,11 +102,11 @@ Placement PlanRows::operator[](std::size_t row) const {
 }
 
 std::string row_key(const Placement& placement, const std::string& settings_key) {
-  return ContentHash()
-      .add(arrangement_word(placement.arrangement))
-      .add(label_of(placement.walls))
-      .add(settings_key)
-      .hex();
+  ContentHash hash;
+  hash.add(arrangement_word(placement.arrangement)).add(label_of(placement.first));
+  hash.add(placement.second ? label_of(*placement.second) : std::string());
+  hash.add(placement.gap_nm.value_or(0.0));
+  return hash.add(settings_key).hex();
 }
 
 }  // namespace gapwright

@@ -32,8 +32,11 @@ std::vector<std::size_t> sorted_places(const std::vector<SortKey>& keys, bool de
 }
 
 Placement placement_of(const Binding& row) {
-  return {parse_arrangement(row.arrangement),
-          std::get<TubeObject>(parse_label(row.object_1 + "@" + row.object_2).object)};
+  const Arrangement arrangement = parse_arrangement(row.arrangement);
+  if (arrangement == Arrangement::coaxial)
+    return {arrangement, parse_label(row.object_1 + "@" + row.object_2).object};
+  return {arrangement, parse_label(row.object_1).object, parse_label(row.object_2).object,
+          row.gap_nm};
 }
 
 }  // namespace
@@ -51,8 +54,8 @@ Binding under_target(const Binding& row, const Binder& binder, const std::string
   if (!row.energy_eV_per_nm || !row.dispersion_eV_per_nm) return changed;
   const double contact = binder.contact_eV_per_nm(placement_of(row), contact_target);
   const double energy = *row.dispersion_eV_per_nm + contact;
-  const double inner_radius_nm = row.diameter_1_nm / 2;
-  const double outer_radius_nm = row.diameter_2_nm / 2;
+  const double inner_radius_nm = row.diameter_1_nm.value() / 2;
+  const double outer_radius_nm = row.diameter_2_nm.value() / 2;
   const double mid_circumference_nm = constants::pi * (inner_radius_nm + outer_radius_nm);
   const double per_area = energy / mid_circumference_nm;  // eV/nm²
   changed.contact_eV_per_nm = contact;

@@ -2,8 +2,8 @@
 
 #include <gapwright/catalog/input_error.hpp>
 
-#include <cstring>
 #include <stdexcept>
+#include <system_error>
 
 namespace gapwright {
 namespace {
@@ -36,7 +36,8 @@ std::optional<Blame> blame_of(int code, int system_error) {
     case SQLITE_IOERR:
       return Blame{
           "the disk refuses to read or write" +
-              (system_error != 0 ? std::string(": ") + std::strerror(system_error) : std::string()),
+              (system_error != 0 ? std::string(": ") + std::generic_category().message(system_error)
+                                 : std::string()),
           "a disk with space and without faults; rows written before are kept"};
     default:
       return std::nullopt;

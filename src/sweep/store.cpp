@@ -101,11 +101,19 @@ struct Store::Impl {
     insert_pair->step();
   }
 
-  void write_object(const std::string& label, const std::string& kind, double diameter_nm,
-                    double chiral_angle_deg, double band_gap_eV) {
+  void write_object(const std::string& label, const std::string& kind,
+                    std::optional<double> diameter_nm, std::optional<double> chiral_angle_deg,
+                    std::optional<double> band_gap_eV) {
     insert_object->reset();
-    insert_object->bind(0, label).bind(1, kind).bind(2, diameter_nm).bind(3, chiral_angle_deg);
-    insert_object->bind(4, band_gap_eV);
+    insert_object->bind(0, label).bind(1, kind);
+    int parameter = 2;
+    for (const std::optional<double>& value : {diameter_nm, chiral_angle_deg, band_gap_eV}) {
+      if (value)
+        insert_object->bind(parameter, *value);
+      else
+        insert_object->bind_null(parameter);
+      ++parameter;
+    }
     insert_object->step();
   }
 

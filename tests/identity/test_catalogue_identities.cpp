@@ -23,13 +23,13 @@ constexpr double pi = std::numbers::pi;
 
 Placement walls(std::vector<Tube> tubes) {
   Placement placement;
-  placement.walls.walls = std::move(tubes);
+  placement.first = TubeObject{std::move(tubes)};
   return placement;
 }
 
 Placement labelled(const std::string& label) {
   Placement placement;
-  placement.walls = std::get<TubeObject>(parse_label(label).object);
+  placement.first = parse_label(label).object;
   return placement;
 }
 
@@ -72,19 +72,20 @@ void check_fields() {
   const double charge = 1.602176634e-19, atom_area = 0.75 * std::sqrt(3.0) * 0.142e-9 * 0.142e-9;
   for (const Row& row : catalogue()) {
     const Binding& b = row.binding;
-    const Tube &inner = row.placement.walls.walls[0], &outer = row.placement.walls.walls[1];
+    const Tube &inner = tubes_of(row.placement.first).walls[0],
+               &outer = tubes_of(row.placement.first).walls[1];
     INFO(b.object_1 << "@" << b.object_2);
     CHECK(b.status == Status::ok);
     CHECK(b.diameter_1_nm == inner.diameter_nm());
     CHECK(b.diameter_2_nm == outer.diameter_nm());
-    CHECK(*b.gap_nm == Approx((b.diameter_2_nm - b.diameter_1_nm) / 2).epsilon(1e-14));
+    CHECK(*b.gap_nm == Approx((*b.diameter_2_nm - *b.diameter_1_nm) / 2).epsilon(1e-14));
     CHECK(b.kind_1 == (inner.metallic() ? "metallic" : "semiconducting"));
     CHECK(b.kind_2 == (outer.metallic() ? "metallic" : "semiconducting"));
 
     CHECK(*b.dispersion_eV_per_nm + *b.contact_eV_per_nm ==
           Approx(*b.energy_eV_per_nm).epsilon(1e-14));
     const double joule_per_m = *b.energy_eV_per_nm * charge / 1e-9;
-    const double mid_circumference = pi * (b.diameter_1_nm + b.diameter_2_nm) / 2 * 1e-9;
+    const double mid_circumference = pi * (*b.diameter_1_nm + *b.diameter_2_nm) / 2 * 1e-9;
     const double joule_per_m2 = joule_per_m / mid_circumference;
     CHECK(*b.energy_mJ_per_m2 == Approx(joule_per_m2 * 1e3).epsilon(1e-13));
     CHECK(*b.energy_meV_per_atom == Approx(joule_per_m2 * atom_area / charge * 1e3).epsilon(1e-13));
@@ -122,8 +123,9 @@ void check_equal_radii() {
     const Binding& b = row.binding;
     const Same own{*b.contact_eV_per_nm, *b.pair_potential_eV_per_nm,
                    *b.dispersion_eV_per_nm - *b.electronic_share_eV_per_nm};
-    const auto [at, is_new] = seen.insert(
-        {{norm(row.placement.walls.walls[0]), norm(row.placement.walls.walls[1])}, own});
+    const auto [at, is_new] = seen.insert({{norm(tubes_of(row.placement.first).walls[0]),
+                                            norm(tubes_of(row.placement.first).walls[1])},
+                                           own});
     if (is_new) continue;
     ++compared;
     INFO(b.object_1 << "@" << b.object_2);
@@ -138,7 +140,7 @@ void check_equal_radii() {
 void check_order_by_gap() {
   std::map<Chirality, std::vector<const Row*>> by_inner;
   for (const Row& row : catalogue())
-    by_inner[row.placement.walls.walls[0].chirality].push_back(&row);
+    by_inner[tubes_of(row.placement.first).walls[0].chirality].push_back(&row);
   for (auto& [inner, rows] : by_inner) {
     std::sort(rows.begin(), rows.end(),
               [](const Row* a, const Row* b) { return *a->binding.gap_nm < *b->binding.gap_nm; });

@@ -20,7 +20,7 @@ namespace {
 
 Placement labelled(const std::string& label) {
   Placement placement;
-  placement.walls = std::get<TubeObject>(parse_label(label).object);
+  placement.first = parse_label(label).object;
   return placement;
 }
 
@@ -35,7 +35,8 @@ std::vector<Placement> assorted_rows() {
   for (const Tube& around : candidate_tubes(filter))
     for (const Tube& inside : inner) {
       const double gap = around.radius_nm - inside.radius_nm;
-      if (gap >= 0.30 && gap <= 0.40) rows.push_back({Arrangement::coaxial, {{inside, around}}});
+      if (gap >= 0.30 && gap <= 0.40)
+        rows.push_back({Arrangement::coaxial, TubeObject{{inside, around}}});
     }
   for (const char* label : {"5,5@10,10@15,15", "8,1@10,10@15,15", "5,5@16,4", "5,5@8,8"})
     rows.push_back(labelled(label));
@@ -127,7 +128,7 @@ TEST_CASE("a row's bits do not depend on what a Binder did before or beside it")
     const Binder warmed(Catalogs::built_in(), {});
     warmed.announce(rows);
     for (const Placement& row : rows)
-      for (const Tube& tube : row.walls.walls) warmed.warm(tube);
+      for (const Tube& tube : tubes_of(row.first).walls) warmed.warm(tube);
     for (std::size_t k = 0; k < rows.size(); ++k) {
       INFO(in_order[k].object_1 << "@" << in_order[k].object_2);
       CHECK(first_difference(warmed.bind(rows[k]), in_order[k]).empty());

@@ -17,7 +17,7 @@ const Binder& usual() {
 
 Binding row(const std::string& label, const Binder& binder = usual()) {
   Placement placement;
-  placement.walls = std::get<TubeObject>(parse_label(label).object);
+  placement.first = parse_label(label).object;
   return binder.bind(placement);
 }
 

@@ -37,7 +37,7 @@ std::vector<Pair> pairs_that_fit() {
       const double gap = outside.radius_nm - inside.radius_nm;
       if (gap >= 0.334 && gap <= 0.346)
         pairs.push_back(
-            {inside, outside, binder.bind({Arrangement::coaxial, {{inside, outside}}})});
+            {inside, outside, binder.bind({Arrangement::coaxial, TubeObject{{inside, outside}}})});
     }
   std::sort(pairs.begin(), pairs.end(),
             [](const Pair& a, const Pair& b) { return a.share() < b.share(); });

@@ -60,7 +60,7 @@ TEST_CASE("fields of a row are set and read by name") {
   CHECK(row.status == Status::not_converged);
   binding_field("thermal_share").set(row, FieldValue());
   CHECK_FALSE(row.thermal_share.has_value());
-  CHECK_THROWS_AS(binding_field("diameter_1_nm").set(row, FieldValue()), std::invalid_argument);
+  CHECK_THROWS_AS(binding_field("temperature_K").set(row, FieldValue()), std::invalid_argument);
   CHECK_THROWS_AS(binding_field("status").set(row, FieldValue(std::string("fine"))),
                   std::invalid_argument);
   try {
@@ -85,7 +85,7 @@ TEST_CASE("rows of a plan are all pairs within its bounds, in order, once") {
         wanted.insert(inner.label() + "@" + outer.label());
   std::set<std::string> found;
   for (std::size_t k = 0; k < rows.size(); ++k) {
-    CHECK(found.insert(label_of(rows[k].walls)).second);
+    CHECK(found.insert(label_of(rows[k].first)).second);
     if (k > 0) CHECK(rows.outer(k - 1).radius_nm <= rows.outer(k).radius_nm);
   }
   CHECK(found == wanted);

@@ -26,11 +26,11 @@ struct Interface {
 struct Binding {
   std::string object_1, object_2;
   std::string kind_1, kind_2;
-  double diameter_1_nm = 0.0, diameter_2_nm = 0.0;
-  double chiral_angle_1_deg = 0.0, chiral_angle_2_deg = 0.0;
-  double band_gap_1_eV = 0.0, band_gap_2_eV = 0.0;
+  std::optional<double> diameter_1_nm, diameter_2_nm;
+  std::optional<double> chiral_angle_1_deg, chiral_angle_2_deg;
+  std::optional<double> band_gap_1_eV, band_gap_2_eV;
   std::string arrangement;
-  std::optional<double> gap_nm;
+  std::optional<double> gap_nm, axis_distance_nm;
   double temperature_K = 0.0;
   double chemical_potential_eV = 0.0;
   std::string medium = "vacuum";
@@ -40,7 +40,10 @@ struct Binding {
   std::optional<double> pressure_dispersion_GPa, pressure_GPa;
   std::optional<double> electronic_share_eV_per_nm, thermal_share;
   std::optional<double> pull_out_force_nN, cut_energy_eV_per_nm, pair_potential_eV_per_nm;
+  std::optional<double> equilibrium_gap_nm, well_depth_eV_per_nm, stiffness_eV_per_nm3;
+  std::optional<double> first_round_trip_eV_per_nm;
   std::optional<double> relative_error, energy_error, pressure_error, electronic_share_error;
+  std::optional<double> equilibrium_gap_error, well_depth_error;
   Status status = Status::ok;
   std::string message;                ///< why the status is not ok
   std::vector<Interface> interfaces;  ///< more than two walls

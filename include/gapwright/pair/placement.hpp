@@ -3,20 +3,30 @@
 
 #include <gapwright/lattice/label.hpp>
 
+#include <optional>
 #include <string>
+#include <string_view>
 
 namespace gapwright {
 
-enum class Arrangement { coaxial };
+enum class Arrangement {
+  coaxial,   ///< walls in walls, one object
+  parallel,  ///< axes side by side
+};
 
-/// "coaxial" and back; throws InputError for another word.
+/// "coaxial", "parallel" and back; throws InputError for another word.
 std::string arrangement_word(Arrangement arrangement);
 Arrangement parse_arrangement(std::string_view word);
 
 /// Bodies and how they are placed: what one row is about.
 struct Placement {
   Arrangement arrangement = Arrangement::coaxial;
-  TubeObject walls;  ///< all walls, innermost first
+  Object first{};                  ///< coaxial: all walls of the row
+  std::optional<Object> second{};  ///< beside it; none for coaxial
+  std::optional<double> gap_nm{};  ///< between the surfaces; none: the equilibrium
 };
+
+/// The tube of an object that must be one. Throws InputError otherwise.
+const TubeObject& tubes_of(const Object& object);
 
 }  // namespace gapwright
