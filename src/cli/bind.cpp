@@ -8,30 +8,44 @@
 namespace gapwright::cli {
 namespace {
 
-constexpr const char* expected_walls =
-    "one label of walls in walls, inner@outer, such as 5,5@10,10";
+constexpr const char* expected_objects =
+    "walls in walls, inner@outer, such as 5,5@10,10, or two tubes such as 10,10 17,0";
+const NumberRange gap_range{min_gap_nm, farthest_gap_nm, "nm"};
 
-TubeObject parse_walls(const Words& words) {
-  if (words.operands.size() != 1)
-    throw InputError(
-        {words.operands.empty()
-             ? "no object"
-             : "objects beside each other; this version computes coaxial walls only",
-         "bind",
-         {},
-         expected_walls,
-         words.operands.size() == 2 ? words.operands[0] + "@" + words.operands[1] : std::string()});
-  const ParsedLabel parsed = parse_label(words.operands.front());
+InputError unfit(const std::string& what, const std::string& nearest = {}) {
+  return InputError({what, "bind", {}, expected_objects, nearest});
+}
+
+Object parse_object(const std::string& label) {
+  const ParsedLabel parsed = parse_label(label);
   for (const std::string& remark : parsed.notes) note("note: " + remark);
-  const TubeObject* object = std::get_if<TubeObject>(&parsed.object);
-  if (!object || object->walls.size() < 2)
-    throw InputError(
-        {label_of(parsed.object) + " is one object; this version computes coaxial walls only",
-         "bind",
-         {},
-         expected_walls,
-         {}});
-  return *object;
+  if (!std::holds_alternative<TubeObject>(parsed.object))
+    throw unfit(label_of(parsed.object) + " is no tube; this version binds tubes");
+  return parsed.object;
+}
+
+Placement parse_walls(const Words& words) {
+  const Object object = parse_object(words.operands.front());
+  if (tubes_of(object).walls.size() < 2)
+    throw unfit(label_of(object) + " is one object", label_of(object) + " " + label_of(object));
+  for (const char* option : {"--gap-nm", "--parallel"})
+    if (words.has(option) || words.flag(option))
+      throw InputError({std::string(option) + " is for two objects; the gaps of walls in walls are "
+                                              "those of their radii",
+                        option,
+                        {},
+                        "no such option here",
+                        {}});
+  return {Arrangement::coaxial, object};
+}
+
+Placement parse_placement(const Words& words) {
+  if (words.operands.empty()) throw unfit("no object");
+  if (words.operands.size() == 1) return parse_walls(words);
+  if (words.operands.size() > 2)
+    throw unfit("more than two objects", words.operands[0] + " " + words.operands[1]);
+  return {Arrangement::parallel, parse_object(words.operands[0]), parse_object(words.operands[1]),
+          words.number("--gap-nm", gap_range)};
 }
 
 }  // namespace
@@ -39,13 +53,13 @@ TubeObject parse_walls(const Words& words) {
 int bind(const Words& words) {
   const Catalogs catalogs = load_catalogs(words);
   const Settings settings = read_settings(words, catalogs);
-  const TubeObject walls = parse_walls(words);
+  const Placement placement = parse_placement(words);
   const Binder binder(catalogs, settings);
-  const Binding row = binder.bind({Arrangement::coaxial, walls});
+  const Binding row = binder.bind(placement);
   print(words.flag("--json") ? row_json(row).dump() + "\n" : binding_text(row));
   if (row.status == Status::ok) return good;
-  note("gapwright: " + row.object_1 + "@" + row.object_2 + ": " +
-       std::string(status_word(row.status)) + ", " + row.message);
+  note("gapwright: " + pair_text(row) + ": " + std::string(status_word(row.status)) + ", " +
+       row.message);
   return some_failed;
 }
 

@@ -2,6 +2,8 @@
 
 #include "text_table.hpp"
 
+#include <gapwright/pair/placement.hpp>
+
 #include <cmath>
 
 #include <fmt/format.h>
@@ -16,7 +18,10 @@ std::string line(const std::string& name, std::optional<double> value, int decim
                  const std::string& unit, std::optional<double> error = {},
                  const std::string& remark = {}) {
   if (!value) return {};
-  std::string text = fmt::format("  {:<20}{:>12} {}", name, fixed(value, decimals), unit);
+  // Far bodies: what fixed decimals would round away.
+  const bool small = *value != 0 && std::abs(*value) < 1e-2;
+  std::string text = fmt::format("  {:<20}{:>12} {}", name,
+                                 small ? significant(value, 5) : fixed(value, decimals), unit);
   if (error) text += fmt::format(" ± {}", significant(error, 2));
   if (!remark.empty()) text += "   " + remark;
   return text + "\n";
@@ -30,13 +35,19 @@ std::string body_line(const char* name, const std::string& object, const std::st
                      fixed(band_gap_eV, 4));
 }
 
+bool coaxial(const Binding& row) {
+  return row.arrangement == arrangement_word(Arrangement::coaxial);
+}
+
 std::string geometry_text(const Binding& row) {
   return "geometry\n" +
-         body_line("inner", row.object_1, row.kind_1, row.diameter_1_nm, row.chiral_angle_1_deg,
-                   row.band_gap_1_eV) +
-         body_line("outer", row.object_2, row.kind_2, row.diameter_2_nm, row.chiral_angle_2_deg,
-                   row.band_gap_2_eV) +
-         line("gap", row.gap_nm, 4, "nm");
+         body_line(coaxial(row) ? "inner" : "first", row.object_1, row.kind_1, row.diameter_1_nm,
+                   row.chiral_angle_1_deg, row.band_gap_1_eV) +
+         body_line(coaxial(row) ? "outer" : "second", row.object_2, row.kind_2, row.diameter_2_nm,
+                   row.chiral_angle_2_deg, row.band_gap_2_eV) +
+         line("gap", row.gap_nm, 4, "nm", row.equilibrium_gap_error,
+              row.equilibrium_gap_nm ? "the bottom of the well" : "") +
+         line("axis distance", row.axis_distance_nm, 4, "nm");
 }
 
 std::optional<double> absolute(std::optional<double> relative, std::optional<double> value) {
@@ -56,6 +67,8 @@ std::string energy_text(const Binding& row) {
               "the same walls with the π electrons of flat graphene") +
          line("  by electrons", row.electronic_share_eV_per_nm, energy_decimals, unit,
               row.electronic_share_error, "what the walls' own bands change") +
+         line("  first round trip", row.first_round_trip_eV_per_nm, energy_decimals, unit, {},
+              "of the dispersion") +
          line("contact", row.contact_eV_per_nm, energy_decimals, unit, {},
               "target " + row.contact_target) +
          line("total", row.energy_eV_per_nm, energy_decimals, unit, row.energy_error) +
@@ -72,6 +85,13 @@ std::string force_text(const Binding& row) {
   if (row.pull_out_force_nN)
     text += "pulling the inner wall out\n" + line("force", row.pull_out_force_nN, 4, "nN");
   return text;
+}
+
+std::string well_text(const Binding& row) {
+  if (!row.well_depth_eV_per_nm) return {};
+  return "well\n" +
+         line("depth", row.well_depth_eV_per_nm, energy_decimals, "eV/nm", row.well_depth_error) +
+         line("stiffness", row.stiffness_eV_per_nm3, 2, "eV/nm3");
 }
 
 std::string interfaces_text(const Binding& row) {
@@ -93,13 +113,17 @@ std::string beside_text(const Binding& row) {
 
 }  // namespace
 
+std::string pair_text(const Binding& row) {
+  return row.object_1 + (coaxial(row) ? "@" : " ") + row.object_2;
+}
+
 std::string binding_text(const Binding& row) {
-  std::string text = fmt::format("{}@{}   {}, {} K, {}", row.object_1, row.object_2,
-                                 row.arrangement, row.temperature_K, row.medium);
+  std::string text = fmt::format("{}   {}, {} K, {}", pair_text(row), row.arrangement,
+                                 row.temperature_K, row.medium);
   if (row.chemical_potential_eV != 0)
     text += fmt::format(", chemical potential {} eV", row.chemical_potential_eV);
-  text += "\n\n" + geometry_text(row) + energy_text(row) + interfaces_text(row) + force_text(row) +
-          beside_text(row) + fmt::format("status {}", status_word(row.status));
+  text += "\n\n" + geometry_text(row) + energy_text(row) + well_text(row) + interfaces_text(row) +
+          force_text(row) + beside_text(row) + fmt::format("status {}", status_word(row.status));
   if (row.relative_error)
     text +=
         fmt::format(", relative error of the dispersion {}", significant(row.relative_error, 2));

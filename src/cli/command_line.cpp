@@ -41,7 +41,11 @@ const std::vector<OptionText>& common_options() {
 const std::vector<CommandText>& commands() {
   static const std::vector<CommandText> all = {
       {"describe", "OBJECT...", "Geometry, bands and response of tubes and of graphene", {}},
-      {"bind", "A@B[@C...]", "Binding of walls in walls, inner@outer", {}},
+      {"bind",
+       "A@B[@C...] | A B",
+       "Binding of walls in walls, inner@outer, or of two tubes side by side",
+       {{"--parallel", "", "Side by side (the default of two objects)"},
+        {"--gap-nm", "X", "Gap between two tubes (default: the bottom of the well)"}}},
       {"rank",
        "[PLAN.toml]",
        "Every pair of a range, the strongest first; flags add to a plan or replace its keys",

@@ -36,6 +36,12 @@ IndexRange contact_frequencies(const Nodes& nodes) {
   return {first, nodes.xi.index_above(highest) - first + 1};
 }
 
+Nodes nodes_on(IndexRange xi, const Nodes& nodes) {
+  Nodes chosen = nodes;
+  if (xi.first < contact_frequencies(nodes).first) chosen.q.step *= 0.5;
+  return chosen;
+}
+
 IndexRange frequencies_at(double distance_nm, const Nodes& nodes) {
   IndexRange range = contact_frequencies(nodes);
   if (distance_nm <= 1.0) return range;

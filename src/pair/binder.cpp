@@ -33,9 +33,6 @@ Settings checked(const Catalogs& catalogs, Settings settings) {
   return settings;
 }
 
-/// The grids carry bodies beside each other up to here.
-constexpr double farthest_gap_nm = 1e4;
-
 /// Throws InputError unless the bodies fit the arrangement.
 void check(const Placement& placement) {
   const TubeObject& first = tubes_of(placement.first);

@@ -40,8 +40,8 @@ std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const
   if (window.q.count > 0)
     e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
   if (e.announced.q.count == 0) return nullptr;
-  e.response = std::make_shared<const ShellResponse>(
-      tube_response(tube, carbon_.hopping, carbon_.conditions, carbon_.nodes, e.announced));
+  e.response = std::make_shared<const ShellResponse>(tube_response(
+      tube, carbon_.hopping, carbon_.conditions, nodes_on(window.xi, carbon_.nodes), e.announced));
   return e.response;
 }
 
@@ -107,7 +107,7 @@ std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel 
         shell_scatterer(channel, *own, carbon_.background, whole));
   } else {
     const ShellResponse flat_shell =
-        flat_shell_response(flat(whole.xi), tube.radius_nm, carbon_.nodes, whole);
+        flat_shell_response(flat(whole.xi), tube.radius_nm, own->nodes(), whole);
     made = std::make_shared<const Scatterer>(
         shell_scatterer(channel, flat_shell, carbon_.background, whole));
   }

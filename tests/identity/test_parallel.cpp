@@ -32,12 +32,12 @@ TEST_CASE("exchanging the two objects changes nothing") {
 }
 
 TEST_CASE("the distance slope is the derivative of the energy") {
-  const Nodes nodes = make_nodes(1e-4);
   const Catalogs& catalogs = Catalogs::built_in();
   const Tube a = make_tube({8, 2}), b = make_tube({7, 7});
   for (const double gap : {0.25, 0.34, 1.0, 20.0}) {
     const double distance = a.radius_nm + b.radius_nm + gap, step = 1e-4 * gap;
-    const Window window = parallel_window(a.radius_nm, b.radius_nm, distance, nodes);
+    const Window window = parallel_window(a.radius_nm, b.radius_nm, distance, make_nodes(1e-4));
+    const Nodes nodes = nodes_on(window.xi, make_nodes(1e-4));
     const auto scatterer = [&](const Tube& tube) {
       return shell_scatterer(Channel::outward,
                              tube_response(tube, catalogs.hopping(), {}, nodes, window),

@@ -27,6 +27,10 @@ double lowest_wave(double length_nm, double tolerance);
 
 /// The frequency range every contact row uses at this tolerance.
 IndexRange contact_frequencies(const Nodes& nodes);
+/// The nodes of rows on a frequency range: half the step in q on ranges that reach below
+/// contact_frequencies, for the integrand of far bodies is narrower in ln q.
+Nodes nodes_on(IndexRange xi, const Nodes& nodes);
+
 /// The frequency range of a row whose bodies are this far apart: contact_frequencies up to 1 nm,
 /// wider towards small frequencies beyond, by decades of the distance.
 IndexRange frequencies_at(double distance_nm, const Nodes& nodes);

@@ -23,6 +23,9 @@ struct Settings {
   double tolerance = 1e-4;  ///< of the dispersion energy, relative
 };
 
+/// The grids carry bodies beside each other up to this gap.
+inline constexpr double farthest_gap_nm = 1e4;
+
 /// Version of the numbers: part of every store key, raised whenever results change.
 std::string_view numerics_version();
 
