@@ -45,16 +45,26 @@ TomlReader built_in_file(const std::string& name) {
 void check_folder(const std::filesystem::path& folder) {
   if (!std::filesystem::is_directory(folder))
     throw InputError({"is not a folder", folder.string(), {}, "a folder of catalogues", {}});
+  bool any = false;
   for (const auto& item : std::filesystem::directory_iterator(folder)) {
     const std::string name = item.path().filename().string();
     if (item.path().extension() != ".toml") continue;
-    if (std::find(file_names().begin(), file_names().end(), name) != file_names().end()) continue;
+    if (std::find(file_names().begin(), file_names().end(), name) != file_names().end()) {
+      any = true;
+      continue;
+    }
     throw InputError({"unknown catalogue",
                       item.path().string(),
                       {},
                       "one of " + joined(file_names()),
                       nearest_word(name, file_names())});
   }
+  if (!any)
+    throw InputError({"holds no catalogue",
+                      folder.string(),
+                      {},
+                      "a folder with some of " + joined(file_names()),
+                      {}});
 }
 
 }  // namespace

@@ -85,22 +85,22 @@ void write_results(const RankRequest& request, const Binder& binder, const Sweep
                                 ? std::min(ranking.size(), std::size_t(request.plan.top))
                                 : ranking.size();
   const bool csv_to_output = request.csv && *request.csv == "-";
-  if (request.csv) {
-    const std::string text = ranked_csv(ranking, making_of(request, binder, order));
-    csv_to_output ? print(text) : write_file(*request.csv, text);
-    if (!csv_to_output)
-      note(fmt::format("{} rows with all fields are in {}", ranking.size(), request.csv->string()));
-  }
-  if (csv_to_output) return;
-  const std::vector<RankedRow> top(ranking.begin(), ranking.begin() + std::ptrdiff_t(shown));
-  if (!request.json) {
-    print(ranking_table(top, order));
-    note(how_to_read(shown, ranking.size(), order));
+  if (csv_to_output) {
+    print(ranked_csv(ranking, making_of(request, binder, order)));
     return;
   }
-  std::string lines;
-  for (const RankedRow& row : top) lines += ranked_json(row).dump() + "\n";
-  print(lines);
+  const std::vector<RankedRow> top(ranking.begin(), ranking.begin() + std::ptrdiff_t(shown));
+  if (request.json) {
+    std::string lines;
+    for (const RankedRow& row : top) lines += ranked_json(row).dump() + "\n";
+    print(lines);
+  } else {
+    print(ranking_table(top, order));
+    note(how_to_read(shown, ranking.size(), order));
+  }
+  if (!request.csv) return;  // last: a file that cannot be written takes no result with it
+  write_file(*request.csv, ranked_csv(ranking, making_of(request, binder, order)));
+  note(fmt::format("{} rows with all fields are in {}", ranking.size(), request.csv->string()));
 }
 
 }  // namespace

@@ -23,10 +23,16 @@ void apply_interval(const Words& words, const std::string& option, const NumberR
     target = Interval{(*bounds)[0], (*bounds)[1]};
 }
 
+/// True when something bounds the tubes: else every pair of all tubes is meant, and hardly by will.
+bool selects(const Plan& plan) {
+  return plan.inner || plan.outer || plan.inner_diameter_nm || plan.outer_diameter_nm ||
+         plan.tubes.diameter_nm || plan.tubes.index;
+}
+
 void apply_flags(const Words& words, Plan& plan) {
   const NumberRange diameters{min_diameter_nm, max_diameter_nm, "nm"};
   if (const auto word = words.text("--arrangement"))
-    plan.arrangement = at_option("--arrangement", [&] { return parse_arrangement(*word); });
+    plan.arrangement = at_option("--arrangement", [&] { return sweep_arrangement(*word); });
   apply_interval(words, "--diameter-nm", diameters, plan.tubes.diameter_nm);
   if (const auto bounds = words.interval("--index", {1, max_index, ""}))
     plan.tubes.index =
@@ -85,9 +91,7 @@ RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
   request.threads = thread_count(words);
   request.json = words.flag("--json");
   request.count = words.flag("--count");
-  const bool selected = std::any_of(selecting.begin(), selecting.end(),
-                                    [&](const char* option) { return words.has(option); });
-  if (words.operands.empty() && !selected && request.pair.empty())
+  if (!selects(request.plan) && request.pair.empty())
     throw InputError({"nothing says which tubes to take",
                       "rank",
                       {},

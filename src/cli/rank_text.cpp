@@ -7,6 +7,7 @@
 
 #include <algorithm>
 #include <array>
+#include <cmath>
 
 #include <fmt/format.h>
 
@@ -42,6 +43,14 @@ std::optional<double> number_of(const Binding& row, std::string_view field) {
   return number ? std::optional(*number) : std::nullopt;
 }
 
+constexpr std::string_view error_after = "energy_mJ_per_m2";
+
+// The numerical error of the energy per area: that per length in the same proportion.
+std::optional<double> area_error(const Binding& row) {
+  if (!row.energy_error || !row.energy_eV_per_nm || !row.energy_mJ_per_m2) return std::nullopt;
+  return std::abs(*row.energy_error / *row.energy_eV_per_nm * *row.energy_mJ_per_m2);
+}
+
 std::string extra_cell(const Binding& row, const std::string& field) {
   const FieldValue value = binding_field(field).get(row);
   if (const std::string* text = std::get_if<std::string>(&value)) return *text;
@@ -61,7 +70,10 @@ std::string ranking_table(const std::vector<RankedRow>& rows, const Order& order
     return row.binding.status != Status::ok;
   });
   std::vector<TextTable::Column> columns = {{"rank", ""}, {"pair", "", true}, {"kind", "", true}};
-  for (const Shown& shown : shown_fields) columns.push_back({shown.title, shown.unit});
+  for (const Shown& shown : shown_fields) {
+    columns.push_back({shown.title, shown.unit});
+    if (error_after == shown.field) columns.push_back({"error", shown.unit});
+  }
   if (extra) columns.push_back({order.field, ""});
   columns.push_back({"spread", "ranks"});
   if (failures) columns.push_back({"status", "", true});
@@ -70,8 +82,10 @@ std::string ranking_table(const std::vector<RankedRow>& rows, const Order& order
     const Binding& pair = row.binding;
     std::vector<std::string> cells = {std::to_string(row.rank), pair.object_1 + "@" + pair.object_2,
                                       kinds(pair)};
-    for (const Shown& shown : shown_fields)
+    for (const Shown& shown : shown_fields) {
       cells.push_back(fixed(number_of(pair, shown.field), shown.decimals));
+      if (error_after == shown.field) cells.push_back(significant(area_error(pair), 1));
+    }
     if (extra) cells.push_back(extra_cell(pair, order.field));
     cells.push_back(std::to_string(row.rank_spread));
     if (failures) cells.emplace_back(status_word(pair.status));

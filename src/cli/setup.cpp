@@ -93,7 +93,8 @@ Settings read_settings(const Words& words, const Catalogs& catalogs, Settings ba
   if (const auto name = words.text("--contact-target"))
     settings.contact_target =
         at_option("--contact-target", [&] { return catalogs.contact_target(*name).name; });
-  settings.tolerance = words.number("--tolerance", {1e-8, 1e-2, ""}).value_or(settings.tolerance);
+  settings.tolerance = words.number("--tolerance", {least_tolerance, largest_tolerance, ""})
+                           .value_or(settings.tolerance);
   return settings;
 }
 

@@ -24,12 +24,12 @@ Settings checked(const Catalogs& catalogs, Settings settings) {
   settings.hopping = catalogs.hopping(settings.hopping).name;
   settings.background = catalogs.background(settings.background).name;
   settings.contact_target = catalogs.contact_target(settings.contact_target).name;
-  if (!(settings.tolerance >= 1e-8 && settings.tolerance <= 1e-2))
+  if (!(settings.tolerance >= least_tolerance && settings.tolerance <= largest_tolerance))
     throw InputError({.what = fmt::format("tolerance {} is out of range", settings.tolerance),
                       .where = "tolerance",
                       .excerpt = {},
-                      .expected = "1e-8 to 1e-2",
-                      .nearest = settings.tolerance > 1e-2 ? "1e-2" : "1e-8"});
+                      .expected = "1e-7 to 1e-2",
+                      .nearest = settings.tolerance > 1e-2 ? "1e-2" : "1e-7"});
   return settings;
 }
 
@@ -95,11 +95,13 @@ const Catalogs& Binder::catalogs() const {
 }
 
 void Binder::announce(const std::vector<Placement>& rows) const {
-  for (const Placement& row : rows)
+  for (const Placement& row : rows) {
+    check(row);
     if (row.arrangement == Arrangement::coaxial)
       announce_coaxial(tubes_of(row.first), impl_->carbon, impl_->cache);
     else
       announce_parallel(row, impl_->carbon, impl_->cache);
+  }
 }
 
 void Binder::warm(const Tube& tube) const {

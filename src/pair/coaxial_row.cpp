@@ -10,7 +10,7 @@ namespace gapwright {
 namespace {
 
 /// Precision of responses read from the flat table, relative to the dispersion energy.
-constexpr double share_precision = 3e-6;
+constexpr double share_precision = 2e-6;
 
 std::vector<Window> interface_windows(const std::vector<Tube>& walls, const Nodes& nodes) {
   std::vector<Window> windows;
@@ -37,32 +37,52 @@ class WallChain {
 
   std::vector<Estimate> interfaces(std::size_t first, std::size_t last, Electrons electrons) const {
     std::vector<Estimate> energies;
+    for (const FrequencyDensity& density : densities(first, last, electrons))
+      energies.push_back(sum(density));
+    return energies;
+  }
+
+  /// Own electrons less those of flat graphene, summed on the nodes: what the two share cancels in
+  /// the error, too.
+  Estimate electronic_share(const std::vector<FrequencyDensity>& own) const {
+    FrequencyDensity difference{std::vector<double>(own.front().full.size()),
+                                std::vector<double>(own.front().full.size()), 0};
+    const auto flat = densities(0, walls_.size() - 1, Electrons::flat);
+    for (std::size_t i = 0; i < own.size(); ++i)
+      for (std::size_t k = 0; k < difference.full.size(); ++k) {
+        difference.full[k] += own[i].full[k] - flat[i].full[k];
+        difference.halved[k] += own[i].halved[k] - flat[i].halved[k];
+      }
+    return sum(difference);
+  }
+
+  std::vector<FrequencyDensity> densities(std::size_t first, std::size_t last,
+                                          Electrons electrons) const {
+    std::vector<FrequencyDensity> all;
     std::shared_ptr<const Scatterer> inside = part(first, Channel::outward, electrons);
     for (std::size_t k = first + 1; k <= last; ++k) {
       const auto around = part(k, Channel::inward, electrons);
       const Window& window = windows_[k - 1];
-      energies.push_back(sum(coaxial_density(*inside, *around, window, false).energy, window));
+      all.push_back(coaxial_density(*inside, *around, window, false).energy);
       if (k < last)
         inside = std::make_shared<const Scatterer>(
             enclosed(*inside, *part(k, Channel::outward, electrons), *around,
                      *part(k, Channel::through, electrons), all_));
     }
-    return energies;
+    return all;
   }
 
-  /// Energy of two walls and its derivative by the gap.
-  std::pair<Estimate, Estimate> energy_and_slope() const {
-    const Window& window = windows_.front();
-    const CoaxialDensity density =
-        coaxial_density(*part(0, Channel::outward, Electrons::own),
-                        *part(1, Channel::inward, Electrons::own), window, true);
-    return {sum(density.energy, window), sum(density.gap_slope, window)};
+  /// Two walls, with the derivative by the gap.
+  CoaxialDensity with_slope() const {
+    return coaxial_density(*part(0, Channel::outward, Electrons::own),
+                           *part(1, Channel::inward, Electrons::own), windows_.front(), true);
+  }
+
+  Estimate sum(const FrequencyDensity& density) const {
+    return frequency_sum(density, carbon_.nodes, all_.xi, carbon_.conditions);
   }
 
  private:
-  Estimate sum(const FrequencyDensity& density, const Window& window) const {
-    return frequency_sum(density, carbon_.nodes, window.xi, carbon_.conditions);
-  }
   std::shared_ptr<const Scatterer> part(std::size_t wall, Channel channel,
                                         Electrons electrons) const {
     return cache_.scatterer(walls_[wall], channel, electrons,
@@ -149,30 +169,31 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
                   const ContactTerm& contact, Binding& row) {
   const WallChain chain(object.walls, carbon, cache);
   const std::size_t last = object.walls.size() - 1;
-  std::vector<Estimate> energies;
+  std::vector<FrequencyDensity> own;
   Estimate slope;
   if (last == 1) {
-    const auto [energy_sum, slope_sum] = chain.energy_and_slope();
-    energies = {energy_sum};
-    slope = slope_sum;
+    CoaxialDensity density = chain.with_slope();
+    slope = chain.sum(density.gap_slope);
+    own = {std::move(density.energy)};
   } else {
-    energies = chain.interfaces(0, last, Electrons::own);
+    own = chain.densities(0, last, Electrons::own);
   }
+  std::vector<Estimate> energies;
+  for (const FrequencyDensity& density : own) energies.push_back(chain.sum(density));
   const Estimate dispersion = total(energies);
   const Estimate contact_energy =
       contact.estimate([&](const PairFunction& pair) { return coaxial_contact(object, pair); });
   const Estimate energy{dispersion.value + contact_energy.value,
                         dispersion.error + contact_energy.error};
-  const Estimate flat = total(chain.interfaces(0, last, Electrons::flat));
+  const Estimate share = chain.electronic_share(own);
 
   row.dispersion_eV_per_nm = dispersion.value;
   row.contact_eV_per_nm = contact_energy.value;
   row.energy_eV_per_nm = energy.value;
   row.energy_error = energy.error;
   row.relative_error = dispersion.error / std::fabs(dispersion.value);
-  row.electronic_share_eV_per_nm = dispersion.value - flat.value;
-  row.electronic_share_error =
-      std::fabs(dispersion.error - flat.error) + share_precision * std::fabs(dispersion.value);
+  row.electronic_share_eV_per_nm = share.value;
+  row.electronic_share_error = share.error + share_precision * std::fabs(dispersion.value);
   row.pair_potential_eV_per_nm = coaxial_contact(object, graphitic_pair_potential());
   if (last == 1) fill_double_wall(object, contact, energy, slope, row);
   fill_interfaces(object, chain, contact, energies, row);

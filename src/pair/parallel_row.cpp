@@ -14,7 +14,7 @@ namespace {
 /// Responses serve a whole well: the closest gap its search visits.
 constexpr double closest_visited_nm = 0.28;
 /// Precision of responses read from the flat table, relative to the dispersion energy.
-constexpr double share_precision = 3e-6;
+constexpr double share_precision = 2e-6;
 
 /// The dispersion energy of two tubes against their gap.
 class ParallelCurve {
@@ -29,26 +29,44 @@ class ParallelCurve {
                            carbon_.nodes);
   }
 
-  DispersionPoint at(double gap, Electrons electrons, bool with_slope) const {
-    const Window window_here = window(gap);
-    const auto a = body_scatterer(first_, electrons, window_here, cache_);
-    const auto b = body_scatterer(second_, electrons, window_here, cache_);
-    const ParallelDensity density =
-        parallel_density(*a, *b, touching() + gap, window_here, with_slope);
-    positive_ = positive_ && density.positive;
-    const auto sum = [&](const FrequencyDensity& d) {
-      return frequency_sum(d, carbon_.nodes, window_here.xi, carbon_.conditions);
-    };
+  DispersionPoint at(double gap, bool with_slope) const {
+    const Window here = window(gap);
+    const ParallelDensity density = densities(gap, here, Electrons::own, with_slope);
     DispersionPoint point;
-    point.energy = sum(density.energy);
-    point.first_round_trip = sum(density.first_round_trip).value;
-    if (with_slope) point.slope = sum(density.distance_slope);
+    point.energy = sum(density.energy, here);
+    point.first_round_trip = sum(density.first_round_trip, here).value;
+    if (with_slope) point.slope = sum(density.distance_slope, here);
     return point;
+  }
+
+  /// Own electrons less those of flat graphene, summed on the nodes: what the two share cancels in
+  /// the error, too.
+  Estimate electronic_share(double gap) const {
+    const Window here = window(gap);
+    FrequencyDensity difference = densities(gap, here, Electrons::own, false).energy;
+    const FrequencyDensity flat = densities(gap, here, Electrons::flat, false).energy;
+    for (std::size_t k = 0; k < difference.full.size(); ++k) {
+      difference.full[k] -= flat.full[k];
+      difference.halved[k] -= flat.halved[k];
+    }
+    return sum(difference, here);
   }
 
   bool positive() const { return positive_; }
 
  private:
+  ParallelDensity densities(double gap, const Window& here, Electrons electrons,
+                            bool with_slope) const {
+    const auto a = body_scatterer(first_, electrons, here, cache_);
+    const auto b = body_scatterer(second_, electrons, here, cache_);
+    ParallelDensity density = parallel_density(*a, *b, touching() + gap, here, with_slope);
+    positive_ = positive_ && density.positive;
+    return density;
+  }
+  Estimate sum(const FrequencyDensity& density, const Window& here) const {
+    return frequency_sum(density, carbon_.nodes, here.xi, carbon_.conditions);
+  }
+
   const TubeObject& first_;
   const TubeObject& second_;
   const Carbon& carbon_;
@@ -88,10 +106,10 @@ void bind_parallel(const Placement& placement, const Carbon& carbon, TubeCache& 
   DispersionPoint point;
   if (placement.gap_nm) {
     row.gap_nm = *placement.gap_nm;
-    point = curve.at(*row.gap_nm, Electrons::own, false);
+    point = curve.at(*row.gap_nm, false);
   } else {
     const auto well = find_well(
-        [&](double gap) { return curve.at(gap, Electrons::own, true); },
+        [&](double gap) { return curve.at(gap, true); },
         [&](double gap) { return parallel_contact(first, second, contact.nominal, gap); });
     if (!well) {
       row.status = Status::no_minimum;
@@ -109,7 +127,7 @@ void bind_parallel(const Placement& placement, const Carbon& carbon, TubeCache& 
   const double gap = *row.gap_nm;
   const Estimate contact_energy = contact.estimate(
       [&](const PairFunction& pair) { return parallel_contact(first, second, pair, gap).energy; });
-  const DispersionPoint flat = curve.at(gap, Electrons::flat, false);
+  const Estimate share = curve.electronic_share(gap);
   const double dispersion = point.energy.value;
   row.axis_distance_nm = curve.touching() + gap;
   row.dispersion_eV_per_nm = dispersion;
@@ -118,9 +136,8 @@ void bind_parallel(const Placement& placement, const Carbon& carbon, TubeCache& 
   row.energy_eV_per_nm = dispersion + contact_energy.value;
   row.energy_error = point.energy.error + contact_energy.error;
   row.relative_error = point.energy.error / std::fabs(dispersion);
-  row.electronic_share_eV_per_nm = dispersion - flat.energy.value;
-  row.electronic_share_error =
-      std::fabs(point.energy.error - flat.energy.error) + share_precision * std::fabs(dispersion);
+  row.electronic_share_eV_per_nm = share.value;
+  row.electronic_share_error = share.error + share_precision * std::fabs(dispersion);
   row.pair_potential_eV_per_nm =
       parallel_contact(first, second, graphitic_pair_potential(), gap).energy;
   if (row.equilibrium_gap_nm) {

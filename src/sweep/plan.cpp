@@ -47,7 +47,7 @@ void read_tube(const TomlReader& reader, const std::string& key, Plan& plan,
 
 void read_tubes(const TomlReader& reader, Plan& plan) {
   if (const auto word = reader.optional_text("arrangement"))
-    plan.arrangement = at_key(reader, "arrangement", [&] { return parse_arrangement(*word); });
+    plan.arrangement = at_key(reader, "arrangement", [&] { return sweep_arrangement(*word); });
   plan.tubes.diameter_nm = interval(reader, "diameter_nm", diameter_range);
   if (const auto bounds = reader.optional_interval("index", index_range))
     plan.tubes.index =
@@ -74,8 +74,8 @@ void read_settings(const TomlReader& reader, const Catalogs& catalogs, Settings&
       reader.optional_word("background", names_of(catalogs.backgrounds())).value_or("");
   settings.contact_target =
       reader.optional_word("contact_target", names_of(catalogs.contact_targets())).value_or("");
-  settings.tolerance =
-      reader.optional_number("tolerance", {1e-8, 1e-2, ""}).value_or(settings.tolerance);
+  settings.tolerance = reader.optional_number("tolerance", {least_tolerance, largest_tolerance, ""})
+                           .value_or(settings.tolerance);
 }
 
 std::vector<std::string> field_names() {
@@ -97,6 +97,15 @@ std::string quoted(const std::string& text) {
 }
 
 }  // namespace
+
+Arrangement sweep_arrangement(std::string_view word) {
+  if (word == arrangement_word(Arrangement::coaxial)) return Arrangement::coaxial;
+  throw InputError({.what = "arrangement '" + std::string(word) + "' is not swept by this version",
+                    .where = "arrangement",
+                    .excerpt = {},
+                    .expected = "coaxial",
+                    .nearest = nearest_word(word, {"coaxial"})});
+}
 
 Interval index_interval(double low, double high) {
   if (low != std::floor(low) || high != std::floor(high))

@@ -4,8 +4,8 @@
 #include <algorithm>
 #include <chrono>
 #include <cmath>
-#include <map>
 #include <optional>
+#include <set>
 #include <stdexcept>
 
 #include <fmt/format.h>
@@ -23,7 +23,10 @@ using Clock = std::chrono::steady_clock;
 constexpr std::size_t batch_rows = 256;
 constexpr double batch_seconds = 0.5;
 constexpr std::size_t tokens_per_thread = 4;
+// Rows are stored block by block: a block ends after this many rows, or after so many tubes whose
+// response is still to be computed that a stop or a kill would lose more than a few seconds.
 constexpr std::size_t block_rows = 2048;
+constexpr std::size_t new_tubes_per_thread = 8;
 
 double seconds_since(Clock::time_point start) {
   return std::chrono::duration<double>(Clock::now() - start).count();
@@ -96,12 +99,14 @@ class Run {
     binder_.contact_term(binder_.settings().contact_target);  // else every task waits for the first
     announce();
     try {
-      for (std::size_t begin = 0; begin < pending_.size() && !must_stop(); begin += block_rows) {
-        const std::size_t end = std::min(begin + block_rows, pending_.size());
+      const auto width = static_cast<std::size_t>(threads);
+      for (std::size_t begin = 0; begin < pending_.size() && !must_stop();) {
+        const auto [end, tubes] = next_block(begin, new_tubes_per_thread * width);
         arena.execute([&] {
-          warm(begin, end);
-          run_pipeline(begin, end, static_cast<std::size_t>(threads));
+          warm(tubes);
+          run_pipeline(begin, end, width);
         });
+        begin = end;
       }
     } catch (...) {
       writer_.flush();
@@ -148,20 +153,51 @@ class Run {
     for (const std::size_t slot : pending_) binder_.announce({rows_[places_[slot]]});
   }
 
-  // The tubes of a block, once each: rows that share one would wait for each other.
-  void warm(std::size_t begin, std::size_t end) const {
-    std::map<Chirality, Tube> tubes;
-    for (std::size_t i = begin; i < end; ++i) {
-      const std::size_t row = places_[pending_[i]];
-      tubes.emplace(rows_.inner(row).chirality, rows_.inner(row));
-      tubes.emplace(rows_.outer(row).chirality, rows_.outer(row));
+  struct Block {
+    std::size_t end;
+    std::vector<Tube> new_tubes;  // whose response no earlier block needed
+  };
+
+  Block next_block(std::size_t begin, std::size_t most_new_tubes) {
+    Block block{begin, {}};
+    while (block.end < pending_.size() && block.end - begin < block_rows &&
+           block.new_tubes.size() < most_new_tubes) {
+      const std::size_t row = places_[pending_[block.end++]];
+      for (const Tube* tube : {&rows_.inner(row), &rows_.outer(row)})
+        if (warmed_.insert(tube->chirality).second) block.new_tubes.push_back(*tube);
     }
-    std::vector<const Tube*> list;
-    for (const auto& [chirality, tube] : tubes) list.push_back(&tube);
-    tbb::parallel_for(std::size_t{0}, list.size(), [&](std::size_t i) {
+    return block;
+  }
+
+  // Each tube once: rows that share one would wait for each other.
+  void warm(const std::vector<Tube>& tubes) const {
+    tbb::parallel_for(std::size_t{0}, tubes.size(), [&](std::size_t i) {
       const SerialRegion serial;
-      if (!must_stop()) binder_.warm(*list[i]);
+      if (!must_stop()) binder_.warm(tubes[i]);
     });
+  }
+
+  // A row that cannot be computed is a row with a status; the sweep goes on.
+  Binding bound(std::size_t row) const {
+    const auto failed = [&](const char* why) {
+      Binding binding;
+      binding.object_1 = rows_.inner(row).label();
+      binding.object_2 = rows_.outer(row).label();
+      binding.arrangement = arrangement_word(rows_[row].arrangement);
+      binding.diameter_1_nm = rows_.inner(row).diameter_nm();
+      binding.diameter_2_nm = rows_.outer(row).diameter_nm();
+      binding.contact_target = binder_.settings().contact_target;
+      binding.status = Status::not_converged;
+      binding.message = why;
+      return binding;
+    };
+    try {
+      return binder_.bind(rows_[row]);
+    } catch (const std::domain_error& error) {
+      return failed(error.what());
+    } catch (const std::invalid_argument& error) {
+      return failed(error.what());
+    }
   }
 
   // Rows enter and leave in order and are computed in any: what is kept never depends on threads.
@@ -176,7 +212,7 @@ class Run {
     };
     const auto bind = [&](std::size_t slot) {
       const SerialRegion serial;
-      Binding row = binder_.bind(rows_[places_[slot]]);
+      Binding row = bound(places_[slot]);
       refuse_non_finite(row);
       results_[slot] = std::move(row);
       return slot;
@@ -215,6 +251,7 @@ class Run {
   std::vector<std::size_t> pending_;             // slots to compute
   std::vector<std::optional<Binding>> results_;  // by slot
   std::atomic<bool> give_up_{false};
+  std::set<Chirality> warmed_;
   std::size_t failed_now_ = 0;
   SweepResult result_;
 };

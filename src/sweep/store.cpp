@@ -211,6 +211,8 @@ std::vector<Binding> Store::read(const std::vector<std::string>& keys) const {
         field.set(row, column_value(select, column, field));
         ++column;
       }
+      if (!row.diameter_1_nm || !row.diameter_2_nm)
+        throw std::invalid_argument("Binding: a pair of tubes without diameters");
     } catch (const std::invalid_argument& error) {
       throw InputError({.what = "the store is damaged: row " + key + ", " + error.what(),
                         .where = impl_->database.file().string(),

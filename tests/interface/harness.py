@@ -87,13 +87,17 @@ class Case(unittest.TestCase):
         self.assertEqual(done.returncode, 0, done.stderr)
         return done
 
-    def refused(self, arguments, *fragments, code=2, **options):
-        """Ends with the code, says every fragment on standard error and nothing on output."""
+    def refused(self, arguments, *fragments, code=2, output="", **options):
+        """Ends with the code, says every fragment on standard error and nothing on output; where
+        results come before what fails, the output begins as given."""
         done = run(*arguments, **options)
         self.assertEqual(done.returncode, code, (arguments, done.stdout, done.stderr))
         for fragment in fragments:
             self.assertIn(fragment, done.stderr, arguments)
-        self.assertEqual(done.stdout, "", arguments)
+        if output:
+            self.assertTrue(done.stdout.startswith(output), arguments)
+        else:
+            self.assertEqual(done.stdout, "", arguments)
         return done
 
     def rows(self, store):

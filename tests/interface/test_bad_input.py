@@ -60,9 +60,12 @@ class CommandLine(harness.Case):
 
     def test_bind_needs_walls(self):
         self.refused(["bind"], "no object", "inner@outer")
-        self.refused(["bind", "10,10"], "coaxial walls only")
-        self.refused(["bind", "5,5", "10,10"], "coaxial walls only", "nearest: 5,5@10,10")
-        self.refused(["bind", "graphene"], "coaxial walls only")
+        self.refused(["bind", "10,10"], "one object", "nearest: (10,10) (10,10)")
+        self.refused(["bind", "5,5", "10,10", "8,8"], "more than two objects")
+        self.refused(["bind", "5,5@10,10", "--gap-nm", "1"], "--gap-nm", "two objects")
+        self.refused(["bind", "10,10", "17,0", "--gap-nm", "0.1"], "--gap-nm", "0.2 to 10000")
+        self.refused(["bind", "graphene"], "is no tube")
+        self.refused(["rank", "/dev/null"], "nothing says which tubes")
         self.refused(["describe"], "no object")
 
     def test_numbers(self):

@@ -24,7 +24,7 @@ class Csv(harness.Case):
     def test_full_disk_keeps_what_was_there(self):
         file = self.path("rows.csv", "what was here before\n")
         self.refused(["rank", *ROWS, "--csv", file], "rows.csv", "cannot be written",
-                     preexec_fn=harness.file_limit(2000))
+                     output="rank ", preexec_fn=harness.file_limit(2000))
         self.assertEqual(file.read_text(), "what was here before\n")
         self.assertEqual(self.leftovers(), [])
 
@@ -45,7 +45,8 @@ class Csv(harness.Case):
         self.assertTrue(done.stdout.startswith("# gapwright"))
 
     def test_device(self):
-        self.refused(["rank", *ROWS, "--csv", "/dev/full"], "/dev/full", "cannot be written")
+        self.refused(["rank", *ROWS, "--csv", "/dev/full"], "/dev/full", "cannot be written",
+                     output="rank ")
         self.good("rank", *ROWS, "--csv", "/dev/null")
 
 

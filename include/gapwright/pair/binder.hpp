@@ -23,6 +23,10 @@ struct Settings {
   double tolerance = 1e-4;  ///< of the dispersion energy, relative
 };
 
+/// Tolerances of the dispersion energy that can be met.
+inline constexpr double least_tolerance = 1e-7;
+inline constexpr double largest_tolerance = 1e-2;
+
 /// The grids carry bodies beside each other up to this gap.
 inline constexpr double farthest_gap_nm = 1e4;
 

@@ -38,6 +38,10 @@ inline constexpr double max_index = 256;  ///< beyond any tube of 20 nm
 Tube parse_single_tube(const std::string& label, const std::string& where,
                        std::vector<std::string>& notes);
 
+/// The arrangement of a plan: this version sweeps coaxial pairs. Throws InputError for another
+/// word.
+Arrangement sweep_arrangement(std::string_view word);
+
 /// A range of the index n from its bounds. Throws InputError unless both are whole.
 Interval index_interval(double low, double high);
 
