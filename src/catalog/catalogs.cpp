@@ -10,7 +10,7 @@ namespace {
 
 const std::vector<std::string>& file_names() {
   static const std::vector<std::string> names = {"hopping.toml", "background.toml", "contact.toml",
-                                                 "checks.toml"};
+                                                 "media.toml", "checks.toml"};
   return names;
 }
 
@@ -75,6 +75,7 @@ const Catalogs& Catalogs::built_in() {
     all.hopping_sets_ = read_hopping_sets(built_in_file("hopping.toml"));
     all.backgrounds_ = read_backgrounds(built_in_file("background.toml"));
     all.contact_targets_ = read_contact_targets(built_in_file("contact.toml"));
+    all.media_ = read_media(built_in_file("media.toml"));
     all.checks_ = read_checks(built_in_file("checks.toml"), names_of(all.hopping_sets_));
     return all;
   }();
@@ -100,6 +101,7 @@ Catalogs Catalogs::from_folder(const std::filesystem::path& folder) {
           [&](const TomlReader& file) { all.backgrounds_ = read_backgrounds(file); });
   replace("contact.toml",
           [&](const TomlReader& file) { all.contact_targets_ = read_contact_targets(file); });
+  replace("media.toml", [&](const TomlReader& file) { all.media_ = read_media(file); });
   replace("checks.toml", [&](const TomlReader& file) {
     all.checks_ = read_checks(file, names_of(all.hopping_sets_));
   });
@@ -116,6 +118,20 @@ const Background& Catalogs::background(const std::string& name) const {
 
 const ContactTarget& Catalogs::contact_target(const std::string& name) const {
   return entry_of(contact_targets_, name, "contact target");
+}
+
+const Medium& Catalogs::medium(const std::string& name) const {
+  static const Medium vacuum;
+  if (name.empty() || name == vacuum.name) return vacuum;
+  for (const Medium& medium : media_)
+    if (medium.name == name) return medium;
+  auto names = names_of(media_);
+  names.insert(names.begin(), vacuum.name);
+  throw InputError({"unknown medium '" + name + "'",
+                    {},
+                    {},
+                    "one of " + joined(names),
+                    nearest_word(name, names)});
 }
 
 std::string Catalogs::hash() const {
@@ -137,6 +153,15 @@ std::string Catalogs::hash() const {
         .add(static_cast<std::int64_t>(target.kind))
         .add(target.spacing_nm)
         .add(target.energy_eV_per_nm2);
+  for (const Medium& medium : media_) {
+    hash.add(medium.name)
+        .add(static_cast<std::int64_t>(medium.liquid))
+        .add(static_cast<std::int64_t>(medium.relaxations.size()))
+        .add(static_cast<std::int64_t>(medium.oscillators.size()));
+    for (const Relaxation& r : medium.relaxations) hash.add(r.energy_eV).add(r.strength);
+    for (const Oscillator& o : medium.oscillators)
+      hash.add(o.energy_eV).add(o.strength_eV2).add(o.damping_eV);
+  }
   return hash.hex();
 }
 

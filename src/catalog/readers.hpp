@@ -2,6 +2,7 @@
 #pragma once
 
 #include <gapwright/catalog/entries.hpp>
+#include <gapwright/catalog/media.hpp>
 #include <gapwright/catalog/toml_reader.hpp>
 
 #include <string>
@@ -15,6 +16,7 @@ namespace gapwright {
 std::vector<HoppingSet> read_hopping_sets(const TomlReader& file);
 std::vector<Background> read_backgrounds(const TomlReader& file);
 std::vector<ContactTarget> read_contact_targets(const TomlReader& file);
+std::vector<Medium> read_media(const TomlReader& file);
 /// `hopping_names` are those a row may ask for.
 std::vector<CheckRow> read_checks(const TomlReader& file,
                                   const std::vector<std::string>& hopping_names);

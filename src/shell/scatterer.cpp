@@ -1,3 +1,5 @@
+#include "usual_orders.hpp"
+
 #include <gapwright/math/bessel.hpp>
 #include <gapwright/shell/scatterer.hpp>
 
@@ -25,9 +27,6 @@ std::size_t Scatterer::bytes() const {
 }
 
 namespace {
-
-/// More multipoles than any row at a gap of 0.2 nm uses, a nm of radius.
-constexpr double largest_orders_per_nm = 64.0;
 
 /// What one cell needs of the Bessel functions at x = qR.
 struct CellWaves {
@@ -78,13 +77,11 @@ Scatterer shell_scatterer(Channel channel, const ShellResponse& response,
     normal[k] = background.normal_nm(xi);
   }
   const int offset = window.q.first - response.window().q.first;
-  // The recurrences always start at the same order, so that bits do not depend on the window.
-  const int usual_orders = 64 * (1 + int(largest_orders_per_nm * radius / 64));
   for (int j = 0; j < window.q.count; ++j) {
     const double q = nodes.q.node(window.q.first + j);
     const double x = q * radius;
     const int orders = window.orders[std::size_t(j)];
-    const BesselLogs waves = bessel_logs(x, std::max(orders, usual_orders));
+    const BesselLogs waves = bessel_logs(x, std::max(orders, usual_orders(radius)));
     for (int m = 0; m < orders; ++m) {
       const std::size_t i = std::size_t(m);
       const double log_product = waves.log_i[i] + waves.log_k[i];

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <gapwright/catalog/entries.hpp>
+#include <gapwright/catalog/media.hpp>
 
 #include <cstdint>
 #include <filesystem>
@@ -16,7 +17,8 @@ class Catalogs {
  public:
   /// The catalogues compiled into the program. Throws InputError only if the build is broken.
   static const Catalogs& built_in();
-  /// The same files read from a folder (hopping.toml, background.toml, contact.toml, checks.toml).
+  /// The same files read from a folder (hopping.toml, background.toml, contact.toml, media.toml,
+  /// checks.toml).
   /// A missing file keeps the built-in one; built-in checks that ask for a hopping set the folder
   /// does not hold are left out. Throws InputError with file, line, text and caret.
   static Catalogs from_folder(const std::filesystem::path& folder);
@@ -25,10 +27,13 @@ class Catalogs {
   const HoppingSet& hopping(const std::string& name = {}) const;
   const Background& background(const std::string& name = {}) const;
   const ContactTarget& contact_target(const std::string& name = {}) const;
+  /// "vacuum" is always there and the default.
+  const Medium& medium(const std::string& name = {}) const;
 
   const std::vector<HoppingSet>& hopping_sets() const { return hopping_sets_; }
   const std::vector<Background>& backgrounds() const { return backgrounds_; }
   const std::vector<ContactTarget>& contact_targets() const { return contact_targets_; }
+  const std::vector<Medium>& media() const { return media_; }
   const std::vector<CheckRow>& checks() const { return checks_; }
 
   /// 64-bit hash over all values (as IEEE bits) and names that enter results; titles, sources and
@@ -39,6 +44,7 @@ class Catalogs {
   std::vector<HoppingSet> hopping_sets_;
   std::vector<Background> backgrounds_;
   std::vector<ContactTarget> contact_targets_;
+  std::vector<Medium> media_;
   std::vector<CheckRow> checks_;
 };
 

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <gapwright/catalog/entries.hpp>
+#include <gapwright/catalog/media.hpp>
 #include <gapwright/math/nodes.hpp>
 #include <gapwright/response/shell_response.hpp>
 
@@ -63,6 +64,14 @@ class Scatterer {
 /// the response covers. Throws std::invalid_argument when it does not.
 Scatterer shell_scatterer(Channel channel, const ShellResponse& response,
                           const Background& background, const Window& window);
+
+/// A shell with vacuum inside and a medium outside (METHODS §4, liquids). T^e may have either sign,
+/// `reduced` carries it; 1 - T^x is the geometric mean of what passes inwards and outwards, so that
+/// enclosed() holds as it is. The radius slope is not formed (zero). With vacuum outside the values
+/// are those of shell_scatterer. Throws std::invalid_argument as it does.
+Scatterer liquid_shell_scatterer(Channel channel, const ShellResponse& response,
+                                 const Background& background, const Medium& outside,
+                                 const Window& window);
 
 /// What walls inside look like from outside the next wall: S_k = T^e_k + (1 - T^x_k)² S_{k-1} /
 /// (1 - S_{k-1} T^i_k), as an outward scatterer with the scale of the outer wall. The radius slope

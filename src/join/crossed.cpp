@@ -1,0 +1,244 @@
+#include "charge_waves.hpp"
+#include "crossed_further.hpp"
+#include "multipoles.hpp"
+#include "wave_table.hpp"
+
+#include <gapwright/catalog/constants.hpp>
+#include <gapwright/join/coaxial.hpp>
+#include <gapwright/join/crossed.hpp>
+
+#include <algorithm>
+#include <cmath>
+#include <stdexcept>
+
+#include <fmt/format.h>
+
+namespace gapwright {
+namespace {
+
+/// Step of t in steps of ln q: the integrand varies a little faster along t.
+constexpr double across_step = 0.8;
+
+/// cosh t beyond which less than a fiftieth of the tolerance is left: the rest falls as 1/cosh t
+/// where the two wave numbers are still alike and as its square beyond.
+double largest_cosh(double tolerance, double sine) {
+  return std::sqrt(50 / (sine * tolerance));
+}
+
+}  // namespace
+
+Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm,
+                      const Nodes& nodes) {
+  const double gap = distance_nm - radius_1_nm - radius_2_nm;
+  if (!(radius_1_nm > 0) || !(radius_2_nm > 0) || !(gap > 0) || !std::isfinite(gap))
+    throw std::domain_error(fmt::format(
+        "crossed_window: radii {} and {} nm, axes {} nm apart, required: bodies that do not touch",
+        radius_1_nm, radius_2_nm, distance_nm));
+  const double limit = largest_exponent(nodes.tolerance);
+  const double share = charge_wave_share(gap);
+  Window window;
+  // Below the lowest frequency the density is continued as a constant while it falls slowly: an
+  // error of about 3e-4·share where bodies this far apart begin. Likewise below the lowest wave
+  // number, 0.6·share·q·D.
+  const double lower = std::max(1.0, 3e-4 * share / (0.1 * nodes.tolerance));
+  window.xi = frequencies_at(std::max(1.0, gap) * lower, nodes);
+  const LogLattice lattice = nodes_on(window.xi, nodes).q;
+  window.q.first = lattice.index_below(std::min(2e-3, 0.05 * nodes.tolerance / share) /
+                                       std::max(1.0, distance_nm));
+  window.q.count = lattice.index_above(limit / (2 * gap)) + 1 - window.q.first + 1;
+  const double wider = std::max(radius_1_nm, radius_2_nm);
+  const double far = distance_nm - std::min(radius_1_nm, radius_2_nm);
+  int largest = 0;
+  for (int j = 0; j < window.q.count; ++j) {
+    // One node more than needed, so that nothing is extrapolated.
+    const double q = lattice.node(window.q.first + std::max(0, j - 1));
+    const int m = largest_multipole(q, wider, far, limit, largest);
+    largest = j == 0 ? m : std::min(m, largest);
+    window.orders.push_back(largest + 1);
+  }
+  return window;
+}
+
+namespace {
+
+/// Wave numbers of equal or of opposite sign along the two axes.
+struct Branch {
+  double sine, cosine;  // of half the angle between the axes, or of half its supplement
+  double sign;          // of q₁q₂
+  double weight;        // 2 where the other branch is the same
+};
+
+std::vector<Branch> branches_of(double angle_deg) {
+  const double half = 0.5 * angle_deg * constants::pi / 180;
+  const double s = std::sin(half), c = std::cos(half);
+  if (angle_deg == max_crossing_deg) return {{s, c, 1.0, 2.0}};
+  return {{s, c, 1.0, 1.0}, {c, s, -1.0, 1.0}};
+}
+
+/// Where the sums of a crossed row run.
+struct Extent {
+  explicit Extent(const Crossing& row)
+      : tolerance(row.first.nodes().tolerance),
+        bodies(row.first.nodes().q),
+        q(row.gap() > 1.0 ? bodies : make_nodes(tolerance).q),
+        stride(int(std::lround(q.step / bodies.step))),
+        lowest(bodies.node(row.window.q.first)),
+        highest(largest_exponent(tolerance) / (2 * row.gap())) {}
+
+  double tolerance;
+  LogLattice bodies;  // the nodes of the bodies
+  LogLattice q;       // those of the sums: every stride-th
+  int stride;
+  double lowest, highest;  // of k
+
+  double widest(const Branch& b) const { return largest_cosh(tolerance, b.sine); }
+  /// v at t.
+  static double split(const Branch& b, double t) { return std::asinh(b.sine * std::sinh(t)); }
+  IndexRange waves(const Branch& b) const {
+    const int low = q.index_below(lowest * b.cosine);
+    return {low, q.index_above(highest * b.cosine) - low + 1};
+  }
+  /// The lowest lattice index a body is asked for.
+  int lowest_index(const std::vector<Branch>& branches) const {
+    int index = bodies.index_below(lowest);
+    for (const Branch& b : branches) {
+      const double v = split(b, std::acosh(widest(b)));
+      index = std::min(index, stride * waves(b).first - int(std::ceil(v / bodies.step)) - 1);
+    }
+    return index;
+  }
+};
+
+/// Sums of one branch.
+class BranchSum {
+ public:
+  BranchSum(const Crossing& crossing, const Branch& branch, const WaveTable& a, const WaveTable& b,
+            CrossedDensity& density, bool with_slope)
+      : crossing_(crossing),
+        extent_(crossing),
+        branch_(branch),
+        a_(a),
+        b_(b),
+        density_(density),
+        with_slope_(with_slope),
+        waves_(extent_.waves(branch)),
+        weights_(trapezoid_weights(extent_.q, waves_, {})),
+        from_a_(std::size_t(a.frequencies())),
+        from_b_(from_a_.size()),
+        product_(from_a_.size()) {}
+
+  void run() {
+    const double step = across_step * extent_.q.step;
+    const double widest = extent_.widest(branch_);
+    for (int i = 0; std::cosh(i * step) <= widest; ++i) {
+      const double t = i * step, v = Extent::split(branch_, t);
+      const WavePlace up(v, extent_.bodies.step), down(-v, extent_.bodies.step);
+      // dq₁dq₂ = 2q² dv d ln q, and the same at -q₁, -q₂.
+      const double measure = 4 * branch_.weight * branch_.sine * std::cosh(t) / std::cosh(v) * step;
+      for (int j = 0; j < waves_.count; ++j) {
+        const double q = extent_.q.node(waves_.first + j);
+        if (q * std::cosh(t) > extent_.highest * branch_.cosine) break;
+        add(j, q, v, q * std::cosh(t) / branch_.cosine, up, down, i);
+        weigh(j, measure * q, q * std::cosh(t) / branch_.cosine, i % 2 == 0);
+      }
+    }
+  }
+
+ private:
+  double across(double q1, double q2) const {
+    const double angle = crossing_.angle_deg * constants::pi / 180;
+    return (branch_.sign * q2 - q1 * std::cos(angle)) / std::sin(angle);
+  }
+
+  /// Fills product_ with r̃₁r̃₂e^{-2kD}k²/π² at (v, and -v for i > 0).
+  void add(int j, double q, double v, double k, const WavePlace& up, const WavePlace& down, int i) {
+    const double more = q * std::exp(v), less = q * std::exp(-v);
+    const double depth_a = crossing_.depth_1(), depth_b = crossing_.depth_2();
+    const int shift = extent_.stride * (waves_.first + j);
+    a_.plane_wave(up, shift, more, k, across(more, less), depth_a, from_a_);
+    b_.plane_wave(down, shift, less, k, across(less, more), depth_b, from_b_);
+    for (std::size_t x = 0; x < product_.size(); ++x) product_[x] = from_a_[x] * from_b_[x];
+    if (i == 0) return;
+    if (&a_ != &b_) {
+      a_.plane_wave(down, shift, less, k, across(less, more), depth_a, from_a_);
+      b_.plane_wave(up, shift, more, k, across(more, less), depth_b, from_b_);
+    }
+    for (std::size_t x = 0; x < product_.size(); ++x) product_[x] += from_a_[x] * from_b_[x];
+  }
+
+  void weigh(int j, double measure, double k, bool even) {
+    // (1/sin²γ)·dq₁dq₂/(2π)²·π²/k²
+    const double sine = std::sin(crossing_.angle_deg * constants::pi / 180);
+    const double factor = -measure / (4 * k * k * sine * sine);
+    const double full = factor * weights_.full[std::size_t(j)];
+    const double halved = even ? 2 * factor * weights_.halved[std::size_t(j)] : 0.0;
+    FrequencyDensity& energy = density_.first_round_trip;
+    FrequencyDensity& slope = density_.first_slope;
+    for (std::size_t x = 0; x < product_.size(); ++x) {
+      energy.full[x] += full * product_[x];
+      energy.halved[x] += halved * product_[x];
+    }
+    if (!with_slope_) return;
+    for (std::size_t x = 0; x < product_.size(); ++x) {
+      slope.full[x] -= 2 * k * full * product_[x];
+      slope.halved[x] -= 2 * k * halved * product_[x];
+    }
+  }
+
+  const Crossing& crossing_;
+  const Extent extent_;
+  const Branch& branch_;
+  const WaveTable& a_;
+  const WaveTable& b_;
+  CrossedDensity& density_;
+  bool with_slope_;
+  IndexRange waves_;
+  AxisWeights weights_;
+  std::vector<double> from_a_, from_b_, product_;
+};
+
+}  // namespace
+
+double Crossing::wider_radius() const {
+  return std::max(first.radius_nm(), second.radius_nm());
+}
+
+void Crossing::require(const char* where) const {
+  if (!(gap() > 0) || !std::isfinite(gap()))
+    throw std::domain_error(
+        fmt::format("{}: axes {} nm apart, required: more than the radii {} and {} nm together",
+                    where, distance_nm, first.radius_nm(), second.radius_nm()));
+  if (!(angle_deg >= min_crossing_deg && angle_deg <= max_crossing_deg))
+    throw std::domain_error(fmt::format("{}: angle {} degrees, required: {} … {}", where, angle_deg,
+                                        min_crossing_deg, max_crossing_deg));
+  for (const Scatterer* body : {&first, &second})
+    if (body->channel() != Channel::outward || !body->window().covers(window))
+      throw std::invalid_argument(
+          fmt::format("{}: outward scatterers on the window are required", where));
+}
+
+CrossedDensity crossed_density(const Scatterer& first, const Scatterer& second, double distance_nm,
+                               double angle_deg, const Window& window, bool with_slope) {
+  const Crossing crossing{first, second, window, distance_nm, angle_deg};
+  crossing.require("crossed_density");
+  CrossedDensity density;
+  density.first_slope.derivatives = 1;
+  const std::size_t frequencies = std::size_t(window.xi.count);
+  for (FrequencyDensity* part : {&density.first_round_trip, &density.first_slope}) {
+    if (part == &density.first_slope && !with_slope) continue;
+    part->full.assign(frequencies, 0.0);
+    part->halved.assign(frequencies, 0.0);
+  }
+  const std::vector<Branch> branches = branches_of(angle_deg);
+  const int lowest = Extent(crossing).lowest_index(branches);
+  const WaveTable a(first, window, lowest);
+  if (&first == &second) {
+    for (const Branch& b : branches) BranchSum(crossing, b, a, a, density, with_slope).run();
+    return density;
+  }
+  const WaveTable b_table(second, window, lowest);
+  for (const Branch& b : branches) BranchSum(crossing, b, a, b_table, density, with_slope).run();
+  return density;
+}
+
+}  // namespace gapwright
