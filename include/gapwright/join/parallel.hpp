@@ -1,4 +1,4 @@
-// Two round bodies side by side (METHODS §5, parallel).
+// Two round bodies side by side (METHODS §5, (5.6)).
 #pragma once
 
 #include <gapwright/join/density.hpp>
