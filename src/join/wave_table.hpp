@@ -31,8 +31,8 @@ class WaveTable {
 
   int frequencies() const { return frequencies_; }
 
-  /// e^{-2k·depth} Σ_m T_m(q) [(k + k_⊥)/q]^{2m} over m of both signs, at every frequency, for
-  /// q = node(place.below + shift …), k² = q² + k_⊥². Multipoles that add less than a
+  /// e^{-2k·depth} Σ_m T_m(q) [(k + k_⊥)/q]^{2m} over m of both signs, at every frequency;
+  /// q lies `shift` nodes above the place, k² = q² + k_⊥². Multipoles that add less than a
   /// thousandth of the tolerance are left out.
   void plane_wave(const WavePlace& place, int shift, double q, double k, double across,
                   double depth, std::span<double> out) const;

@@ -1,4 +1,8 @@
 // A shell between vacuum and a liquid against its boundary problem.
+#include <gapwright/catalog/catalogs.hpp>
+#include <gapwright/catalog/constants.hpp>
+#include <gapwright/join/crossed.hpp>
+#include <gapwright/join/parallel.hpp>
 #include <gapwright/math/bessel.hpp>
 #include <gapwright/shell/scatterer.hpp>
 
@@ -195,4 +199,39 @@ TEST_CASE("walls in walls in a liquid solve their boundary problem") {
     const double exact = matrix.fullPivLu().solve(right)(3);
     CHECK(value(whole, m) == Approx(exact).epsilon(1e-10));
   }
+}
+
+// T_0 changes its sign along q and ξ: interpolation and determinants have to bear it.
+TEST_CASE("crossed tubes in water tend to parallel ones over their lateral offset") {
+  const Catalogs& catalogs = Catalogs::built_in();
+  const Tube tube = make_tube({10, 10});
+  const double distance = tube.diameter_nm() + 0.7;
+  const Nodes nodes = make_nodes(1e-4);
+  const Window window = crossed_window(tube.radius_nm, tube.radius_nm, distance, nodes);
+  const Scatterer body = liquid_shell_scatterer(
+      Channel::outward,
+      tube_response(tube, catalogs.hopping(), {}, nodes_on(window.xi, nodes), window),
+      catalogs.background(), catalogs.medium("water"), window);
+  bool negative = false, positive = false;
+  for (int j = 0; j < window.q.count; ++j)
+    for (const double value : body.reduced(j, 0)) (value < 0 ? negative : positive) = true;
+  CHECK((negative && positive));
+  const auto sum = [&](const FrequencyDensity& d) {
+    return frequency_sum(d, nodes, window.xi, {}).value;
+  };
+  double limit = 0.0;
+  constexpr double step = 0.25;
+  for (int i = 0; i < 28; ++i) {
+    const double y = 0.7 * std::sinh(i * step);
+    limit +=
+        (i == 0 ? 1 : 2) * step * 0.7 * std::cosh(i * step) *
+        sum(parallel_density(body, body, std::hypot(distance, y), window, false).first_round_trip);
+  }
+  const double crossed =
+      sum(crossed_density(body, body, distance, 1.0, window, false).first_round_trip);
+  CHECK(limit < 0);
+  CHECK(crossed * std::sin(constants::pi / 180) == Approx(limit).epsilon(2e-4));
+  const CrossedFurther further = crossed_further(body, body, distance, 90.0, window, false);
+  CHECK(further.positive);
+  CHECK(sum(further.energy) < 0);
 }
