@@ -1,6 +1,7 @@
+#include "beside_row.hpp"
 #include "coaxial_row.hpp"
 #include "contact_terms.hpp"
-#include "parallel_row.hpp"
+#include "parallel_curve.hpp"
 #include "tube_cache.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
@@ -51,6 +52,12 @@ void check(const Placement& placement) {
                       .excerpt = {},
                       .expected = "two objects",
                       .nearest = {}});
+  if (placement.arrangement != Arrangement::parallel)
+    throw InputError({.what = arrangement_word(placement.arrangement) + " is not computed yet",
+                      .where = "arrangement",
+                      .excerpt = {},
+                      .expected = "coaxial or parallel",
+                      .nearest = {}});
   tubes_of(*placement.second);
   if (placement.gap_nm &&
       !(*placement.gap_nm >= min_gap_nm && *placement.gap_nm <= farthest_gap_nm))
@@ -100,7 +107,7 @@ void Binder::announce(const std::vector<Placement>& rows) const {
     if (row.arrangement == Arrangement::coaxial)
       announce_coaxial(tubes_of(row.first), impl_->carbon, impl_->cache);
     else
-      announce_parallel(row, impl_->carbon, impl_->cache);
+      curve(row)->announce(row.gap_nm.value_or(closest_visited_nm));
   }
 }
 
@@ -139,8 +146,16 @@ Binding Binder::bind(const Placement& placement) const {
   if (coaxial)
     bind_coaxial(object, impl_->carbon, impl_->cache, contact, row);
   else
-    bind_parallel(placement, impl_->carbon, impl_->cache, contact, row);
+    bind_beside(*curve(placement), placement.gap_nm, impl_->settings.tolerance, contact, row);
   return row;
+}
+
+std::unique_ptr<PairCurve> Binder::curve(const Placement& placement) const {
+  if (placement.arrangement == Arrangement::coaxial)
+    throw std::invalid_argument("Binder::curve: the arrangement must leave the gap free");
+  check(placement);
+  return std::make_unique<ParallelCurve>(tubes_of(placement.first), tubes_of(*placement.second),
+                                         impl_->carbon, impl_->cache);
 }
 
 double Binder::contact_eV_per_nm(const Placement& placement,
@@ -148,12 +163,9 @@ double Binder::contact_eV_per_nm(const Placement& placement,
   const PairFunction pair = impl_->contacts.term(contact_target).nominal;
   if (placement.arrangement == Arrangement::coaxial)
     return coaxial_contact(tubes_of(placement.first), pair);
-  check(placement);
   if (!placement.gap_nm)
     throw std::invalid_argument("Binder::contact_eV_per_nm: a gap is required");
-  return parallel_contact(tubes_of(placement.first), tubes_of(*placement.second), pair,
-                          *placement.gap_nm)
-      .energy;
+  return curve(placement)->contact(pair, *placement.gap_nm).energy;
 }
 
 PairFunction Binder::contact_term(const std::string& contact_target) const {

@@ -2,16 +2,28 @@
 #include <gapwright/pair/placement.hpp>
 
 #include <array>
+#include <stdexcept>
 
 namespace gapwright {
 namespace {
 
-constexpr std::array arrangements = {Arrangement::coaxial, Arrangement::parallel};
+constexpr std::array arrangements = {Arrangement::coaxial, Arrangement::parallel,
+                                     Arrangement::crossed, Arrangement::over};
 
 }  // namespace
 
 std::string arrangement_word(Arrangement arrangement) {
-  return arrangement == Arrangement::coaxial ? "coaxial" : "parallel";
+  switch (arrangement) {
+    case Arrangement::coaxial:
+      return "coaxial";
+    case Arrangement::parallel:
+      return "parallel";
+    case Arrangement::crossed:
+      return "crossed";
+    case Arrangement::over:
+      return "over";
+  }
+  throw std::invalid_argument("arrangement_word: arrangement outside the enumeration");
 }
 
 Arrangement parse_arrangement(std::string_view word) {

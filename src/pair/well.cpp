@@ -10,7 +10,7 @@ namespace {
 /// ln(-E) over ln g, a cubic on each interval between known points.
 class LogCurve {
  public:
-  void add(double gap, const DispersionPoint& point) {
+  void add(double gap, const CurvePoint& point) {
     const double e = point.energy.value;
     const Knot knot{std::log(gap), std::log(-e), gap * point.slope.value / e};
     knots_.insert(std::upper_bound(knots_.begin(), knots_.end(), knot,
@@ -67,7 +67,7 @@ double root(double low, double high, Function f) {
 
 }  // namespace
 
-std::optional<Well> find_well(const std::function<DispersionPoint(double gap_nm)>& dispersion,
+std::optional<Well> find_well(const std::function<CurvePoint(double gap_nm)>& dispersion,
                               const std::function<SmoothEnergy(double gap_nm)>& contact) {
   LogCurve curve;
   for (const double gap : {0.29, 0.36}) curve.add(gap, dispersion(gap));
@@ -82,7 +82,7 @@ std::optional<Well> find_well(const std::function<DispersionPoint(double gap_nm)
     }
     if (high == closest_well_nm || high >= farthest_well_nm) return std::nullopt;
     const double gap = root(low, high, slope);
-    const DispersionPoint point = dispersion(gap);
+    const CurvePoint point = dispersion(gap);
     curve.add(gap, point);
     if (std::fabs(gap - before) < 1e-7) {
       constexpr double step = 1e-5;

@@ -2,25 +2,18 @@
 #pragma once
 
 #include <gapwright/contact/short_range.hpp>
-#include <gapwright/math/nodes.hpp>
+#include <gapwright/pair/curve.hpp>
 
 #include <functional>
 #include <optional>
 
 namespace gapwright {
 
-/// One point of the dispersion energy against the gap.
-struct DispersionPoint {
-  Estimate energy;  ///< eV/nm
-  Estimate slope;   ///< by the gap [eV/nm²]
-  double first_round_trip = 0.0;
-};
-
 struct Well {
   double gap_nm = 0.0;
   double gap_error_nm = 0.0;
   double stiffness_eV_per_nm3 = 0.0;
-  DispersionPoint dispersion;  ///< at the gap
+  CurvePoint dispersion;  ///< at the gap
 };
 
 inline constexpr double closest_well_nm = 0.22;
@@ -29,7 +22,7 @@ inline constexpr double farthest_well_nm = 0.8;
 /// The gap where dispersion plus contact is least: ln|E| of the dispersion as a cubic in ln g
 /// through energies and slopes, refined by new points until the minimum settles to 1e-7 nm; the
 /// contact term is cheap and exact. None when there is no minimum within 0.22 … 0.8 nm.
-std::optional<Well> find_well(const std::function<DispersionPoint(double gap_nm)>& dispersion,
+std::optional<Well> find_well(const std::function<CurvePoint(double gap_nm)>& dispersion,
                               const std::function<SmoothEnergy(double gap_nm)>& contact);
 
 }  // namespace gapwright

@@ -5,6 +5,7 @@
 #include <gapwright/contact/short_range.hpp>
 #include <gapwright/join/planar.hpp>
 #include <gapwright/pair/binding.hpp>
+#include <gapwright/pair/curve.hpp>
 #include <gapwright/pair/placement.hpp>
 #include <gapwright/response/conditions.hpp>
 
@@ -55,6 +56,10 @@ class Binder {
 
   /// One row under the settings' contact target.
   Binding bind(const Placement& placement) const;
+
+  /// The bodies of a placement with their gap left free; not for walls in walls, whose gaps are
+  /// those of their radii. Throws InputError for bodies that do not fit the arrangement.
+  std::unique_ptr<PairCurve> curve(const Placement& placement) const;
 
   /// Energy of the contact term of a row under another target: rank_spread needs no dispersion.
   double contact_eV_per_nm(const Placement& placement, const std::string& contact_target) const;

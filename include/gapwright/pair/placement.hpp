@@ -12,18 +12,21 @@ namespace gapwright {
 enum class Arrangement {
   coaxial,   ///< walls in walls, one object
   parallel,  ///< axes side by side
+  crossed,   ///< axes at an angle, in parallel planes
+  over,      ///< lying over the flat sheet, or over the plane surface of a medium
 };
 
-/// "coaxial", "parallel" and back; throws InputError for another word.
+/// "coaxial", "parallel", "crossed", "over" and back; throws InputError for another word.
 std::string arrangement_word(Arrangement arrangement);
 Arrangement parse_arrangement(std::string_view word);
 
 /// Bodies and how they are placed: what one row is about.
 struct Placement {
   Arrangement arrangement = Arrangement::coaxial;
-  Object first{};                  ///< coaxial: all walls of the row
-  std::optional<Object> second{};  ///< beside it; none for coaxial
-  std::optional<double> gap_nm{};  ///< between the surfaces; none: the equilibrium
+  Object first{};                     ///< coaxial: all walls of the row
+  std::optional<Object> second{};     ///< beside, across or under it; none for coaxial
+  std::optional<double> gap_nm{};     ///< between the surfaces; none: the equilibrium
+  std::optional<double> angle_deg{};  ///< between the axes, crossed only
 };
 
 /// The tube of an object that must be one. Throws InputError otherwise.

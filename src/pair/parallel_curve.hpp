@@ -1,0 +1,37 @@
+// Tubes side by side.
+#pragma once
+
+#include "tube_cache.hpp"
+
+#include <gapwright/join/parallel.hpp>
+#include <gapwright/lattice/label.hpp>
+#include <gapwright/pair/curve.hpp>
+
+namespace gapwright {
+
+class ParallelCurve final : public PairCurve {
+ public:
+  ParallelCurve(const TubeObject& first, const TubeObject& second, const Carbon& carbon,
+                TubeCache& cache)
+      : first_(first), second_(second), carbon_(carbon), cache_(cache) {}
+
+  double touching_nm() const override;
+  void announce(double closest_gap_nm) const override;
+  CurvePoint dispersion(double gap_nm, bool with_slope, RoundTrips trips) const override;
+  Estimate electronic_share(double gap_nm) const override;
+  bool has_contact() const override { return true; }
+  /// All pairs of walls of the two tubes.
+  SmoothEnergy contact(const PairFunction& pair, double gap_nm) const override;
+
+ private:
+  Window window(double gap_nm) const;
+  ParallelDensity densities(double gap_nm, const Window& here, Electrons electrons,
+                            bool with_slope) const;
+
+  TubeObject first_;
+  TubeObject second_;
+  const Carbon& carbon_;
+  TubeCache& cache_;
+};
+
+}  // namespace gapwright
