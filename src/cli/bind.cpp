@@ -55,7 +55,9 @@ int bind(const Words& words) {
   const Settings settings = read_settings(words, catalogs);
   const Placement placement = parse_placement(words);
   const Binder binder(catalogs, settings);
-  const Binding row = binder.bind(placement);
+  const Binding row = settings.conditions.retarded
+                          ? at_option("--retarded", [&] { return binder.bind(placement); })
+                          : binder.bind(placement);
   print(words.flag("--json") ? row_json(row).dump() + "\n" : binding_text(row));
   if (row.status == Status::ok) return good;
   note("gapwright: " + pair_text(row) + ": " + std::string(status_word(row.status)) + ", " +

@@ -63,6 +63,7 @@ std::string energy_text(const Binding& row) {
   return "energy (negative: attraction)\n" +
          line("dispersion", row.dispersion_eV_per_nm, energy_decimals, unit,
               absolute(row.relative_error, row.dispersion_eV_per_nm)) +
+         line("  retardation", row.retardation_factor, 6, "", {}, "times the non-retarded one") +
          line("  by geometry", geometric, energy_decimals, unit, {},
               "the same walls with the π electrons of flat graphene") +
          line("  by electrons", row.electronic_share_eV_per_nm, energy_decimals, unit,
@@ -122,6 +123,7 @@ std::string binding_text(const Binding& row) {
                                  row.temperature_K, row.medium);
   if (row.chemical_potential_eV != 0)
     text += fmt::format(", chemical potential {} eV", row.chemical_potential_eV);
+  if (row.retardation_factor) text += ", retarded";
   text += "\n\n" + geometry_text(row) + energy_text(row) + well_text(row) + interfaces_text(row) +
           force_text(row) + beside_text(row) + fmt::format("status {}", status_word(row.status));
   if (row.relative_error)

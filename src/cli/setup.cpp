@@ -85,6 +85,7 @@ Settings read_settings(const Words& words, const Catalogs& catalogs, Settings ba
     conditions.chemical_potential_eV = *doping;
     at_option("--chemical-potential-eV", [&] { validate(conditions); });
   }
+  conditions.retarded = conditions.retarded || words.flag("--retarded");
   if (const auto name = words.text("--hopping"))
     settings.hopping = at_option("--hopping", [&] { return catalogs.hopping(*name).name; });
   if (const auto name = words.text("--background"))

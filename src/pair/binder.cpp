@@ -68,6 +68,20 @@ void check(const Placement& placement) {
                       .nearest = *placement.gap_nm > farthest_gap_nm ? "10000" : "0.2"});
 }
 
+/// Throws InputError for a row that retardation is not computed for.
+void check_retarded(const Conditions& conditions, const Placement& placement) {
+  if (!conditions.retarded) return;
+  const bool coaxial = placement.arrangement == Arrangement::coaxial;
+  if (coaxial && tubes_of(placement.first).walls.size() == 2) return;
+  throw InputError({.what = "retardation is not computed for " +
+                            (coaxial ? std::string("more than two walls")
+                                     : arrangement_word(placement.arrangement) + " bodies"),
+                    .where = "retarded",
+                    .excerpt = {},
+                    .expected = "two coaxial walls, inner@outer",
+                    .nearest = {}});
+}
+
 std::string kind_of(const Tube& tube) {
   return tube.metallic() ? "metallic" : "semiconducting";
 }
@@ -104,6 +118,7 @@ const Catalogs& Binder::catalogs() const {
 void Binder::announce(const std::vector<Placement>& rows) const {
   for (const Placement& row : rows) {
     check(row);
+    check_retarded(impl_->settings.conditions, row);
     if (row.arrangement == Arrangement::coaxial)
       announce_coaxial(tubes_of(row.first), impl_->carbon, impl_->cache);
     else
@@ -118,6 +133,7 @@ void Binder::warm(const Tube& tube) const {
 Binding Binder::bind(const Placement& placement) const {
   const bool coaxial = placement.arrangement == Arrangement::coaxial;
   check(placement);
+  check_retarded(impl_->settings.conditions, placement);
   const TubeObject& object = tubes_of(placement.first);
   const TubeObject first =
       coaxial ? TubeObject{{object.walls.begin(), object.walls.end() - 1}} : object;
@@ -154,6 +170,7 @@ std::unique_ptr<PairCurve> Binder::curve(const Placement& placement) const {
   if (placement.arrangement == Arrangement::coaxial)
     throw std::invalid_argument("Binder::curve: the arrangement must leave the gap free");
   check(placement);
+  check_retarded(impl_->settings.conditions, placement);
   return std::make_unique<ParallelCurve>(tubes_of(placement.first), tubes_of(*placement.second),
                                          impl_->carbon, impl_->cache);
 }

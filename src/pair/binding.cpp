@@ -114,6 +114,7 @@ const std::vector<BindingField>& binding_fields() {
       field<&Binding::pressure_GPa>("pressure_GPa"),
       field<&Binding::electronic_share_eV_per_nm>("electronic_share_eV_per_nm"),
       field<&Binding::thermal_share>("thermal_share"),
+      field<&Binding::retardation_factor>("retardation_factor"),
       field<&Binding::pull_out_force_nN>("pull_out_force_nN"),
       field<&Binding::cut_energy_eV_per_nm>("cut_energy_eV_per_nm"),
       field<&Binding::pair_potential_eV_per_nm>("pair_potential_eV_per_nm"),

@@ -2,6 +2,7 @@
 
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/join/coaxial.hpp>
+#include <gapwright/join/retarded_coaxial.hpp>
 #include <gapwright/lattice/label.hpp>
 
 #include <cmath>
@@ -44,10 +45,10 @@ class WallChain {
 
   /// Own electrons less those of flat graphene, summed on the nodes: what the two share cancels in
   /// the error, too.
-  Estimate electronic_share(const std::vector<FrequencyDensity>& own) const {
+  Estimate electronic_share(const std::vector<FrequencyDensity>& own,
+                            const std::vector<FrequencyDensity>& flat) const {
     FrequencyDensity difference{std::vector<double>(own.front().full.size()),
                                 std::vector<double>(own.front().full.size()), 0};
-    const auto flat = densities(0, walls_.size() - 1, Electrons::flat);
     for (std::size_t i = 0; i < own.size(); ++i)
       for (std::size_t k = 0; k < difference.full.size(); ++k) {
         difference.full[k] += own[i].full[k] - flat[i].full[k];
@@ -76,6 +77,15 @@ class WallChain {
   CoaxialDensity with_slope() const {
     return coaxial_density(*part(0, Channel::outward, Electrons::own),
                            *part(1, Channel::inward, Electrons::own), windows_.front(), true);
+  }
+
+  /// The same with retardation.
+  CoaxialDensity retarded(Electrons electrons, bool with_slope) const {
+    const Window& window = windows_.front();
+    const auto inside = cache_.shell(walls_[0], electrons, window);
+    const auto around = cache_.shell(walls_[1], electrons, window);
+    return retarded_coaxial_density(RetardedShell(*inside, carbon_.background),
+                                    RetardedShell(*around, carbon_.background), window, with_slope);
   }
 
   Estimate sum(const FrequencyDensity& density) const {
@@ -169,15 +179,20 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
                   const ContactTerm& contact, Binding& row) {
   const WallChain chain(object.walls, carbon, cache);
   const std::size_t last = object.walls.size() - 1;
-  std::vector<FrequencyDensity> own;
+  const bool retarded = carbon.conditions.retarded;
+  std::vector<FrequencyDensity> own, flat;
   Estimate slope;
   if (last == 1) {
-    CoaxialDensity density = chain.with_slope();
+    CoaxialDensity density = retarded ? chain.retarded(Electrons::own, true) : chain.with_slope();
     slope = chain.sum(density.gap_slope);
     own = {std::move(density.energy)};
   } else {
     own = chain.densities(0, last, Electrons::own);
   }
+  if (retarded)
+    flat = {chain.retarded(Electrons::flat, false).energy};
+  else
+    flat = chain.densities(0, last, Electrons::flat);
   std::vector<Estimate> energies;
   for (const FrequencyDensity& density : own) energies.push_back(chain.sum(density));
   const Estimate dispersion = total(energies);
@@ -185,7 +200,7 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
       contact.estimate([&](const PairFunction& pair) { return coaxial_contact(object, pair); });
   const Estimate energy{dispersion.value + contact_energy.value,
                         dispersion.error + contact_energy.error};
-  const Estimate share = chain.electronic_share(own);
+  const Estimate share = chain.electronic_share(own, flat);
 
   row.dispersion_eV_per_nm = dispersion.value;
   row.contact_eV_per_nm = contact_energy.value;
@@ -194,6 +209,9 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
   row.relative_error = dispersion.error / std::fabs(dispersion.value);
   row.electronic_share_eV_per_nm = share.value;
   row.electronic_share_error = share.error + share_precision * std::fabs(dispersion.value);
+  if (retarded)
+    row.retardation_factor =
+        dispersion.value / total(chain.interfaces(0, last, Electrons::own)).value;
   row.pair_potential_eV_per_nm = coaxial_contact(object, graphitic_pair_potential());
   if (last == 1) fill_double_wall(object, contact, energy, slope, row);
   fill_interfaces(object, chain, contact, energies, row);

@@ -12,7 +12,8 @@ namespace gapwright {
 /// Tubes of a coaxial row with the windows its interfaces need.
 void announce_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cache);
 
-/// Fills the energies of a row of two or more walls (METHODS §5 … §7).
+/// Fills the energies of a row of two or more walls (METHODS §5 … §7), of two with retardation
+/// (§9).
 void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cache,
                   const ContactTerm& contact, Binding& row);
 

@@ -89,6 +89,9 @@ double coaxial_equilibrium_gap_nm(const Binder& binder, const Placement& placeme
   if (tubes_of(placement.first).walls.size() != 2)
     throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.first) +
                             ", required two walls");
+  if (binder.settings().conditions.retarded)
+    throw std::domain_error(
+        "coaxial_equilibrium_gap_nm: conditions = retarded, required non-retarded");
   const Displacement pair(binder, tubes_of(placement.first).walls[0],
                           tubes_of(placement.first).walls[1]);
   double low = least_gap_nm, high = largest_gap_nm;

@@ -99,20 +99,20 @@ std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel 
                                                       Electrons electrons, const Window& window) {
   const Key key{{tube.chirality, window.xi.first}, channel, electrons};
   if (auto found = kept(key, window)) return found;
-  const auto own = response(tube, window);
-  const Window& whole = own->window();
-  std::shared_ptr<const Scatterer> made;
-  if (electrons == Electrons::own) {
-    made = std::make_shared<const Scatterer>(
-        shell_scatterer(channel, *own, carbon_.background, whole));
-  } else {
-    const ShellResponse flat_shell =
-        flat_shell_response(flat(whole.xi), tube.radius_nm, own->nodes(), whole);
-    made = std::make_shared<const Scatterer>(
-        shell_scatterer(channel, flat_shell, carbon_.background, whole));
-  }
+  const auto response = shell(tube, electrons, window);
+  const auto made = std::make_shared<const Scatterer>(
+      shell_scatterer(channel, *response, carbon_.background, response->window()));
   keep(key, made);
   return made;
+}
+
+std::shared_ptr<const ShellResponse> TubeCache::shell(const Tube& tube, Electrons electrons,
+                                                      const Window& window) {
+  auto own = response(tube, window);
+  if (electrons == Electrons::own) return own;
+  const Window& whole = own->window();
+  return std::make_shared<const ShellResponse>(
+      flat_shell_response(flat(whole.xi), tube.radius_nm, own->nodes(), whole));
 }
 
 }  // namespace gapwright

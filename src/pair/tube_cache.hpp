@@ -39,6 +39,9 @@ class TubeCache {
   /// A scatterer whose window covers the one given.
   std::shared_ptr<const Scatterer> scatterer(const Tube& tube, Channel channel, Electrons electrons,
                                              const Window& window);
+  /// The response itself, with own or flat π electrons, on a window that covers the one given.
+  std::shared_ptr<const ShellResponse> shell(const Tube& tube, Electrons electrons,
+                                             const Window& window);
   TubeGaps gaps(const Tube& tube);
 
   /// The flat sheet's response on waves that any tube's cells need at these frequencies.

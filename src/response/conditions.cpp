@@ -35,12 +35,6 @@ void validate(const Conditions& conditions) {
                       .excerpt = {},
                       .expected = "vacuum",
                       .nearest = "vacuum"});
-  if (conditions.retarded)
-    throw InputError({.what = "retardation is not computed for this arrangement",
-                      .where = "retarded",
-                      .excerpt = {},
-                      .expected = "non-retarded",
-                      .nearest = {}});
 }
 
 }  // namespace gapwright

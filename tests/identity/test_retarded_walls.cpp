@@ -1,9 +1,11 @@
 // Retarded walls in their limits: infinite speed of light, and walls of growing radius.
 #include <gapwright/catalog/catalogs.hpp>
 #include <gapwright/catalog/constants.hpp>
+#include <gapwright/catalog/input_error.hpp>
 #include <gapwright/join/retarded_coaxial.hpp>
 #include <gapwright/join/retarded_planar.hpp>
 #include <gapwright/lattice/tube.hpp>
+#include <gapwright/pair/binder.hpp>
 
 #include <cmath>
 #include <utility>
@@ -164,4 +166,44 @@ TEST_CASE("retarded walls with flat electrons tend to two retarded sheets as 1/R
   }
   CHECK(std::fabs(last_energy) < 1e-3);
   CHECK(std::fabs(last_slope) < 1e-3);
+}
+
+TEST_CASE("a retarded row of two walls") {
+  const auto placed = [](const char* label) {
+    return Placement{Arrangement::coaxial, parse_label(label).object};
+  };
+  Settings settings;
+  const Binder usual(Catalogs::built_in(), settings);
+  settings.conditions.retarded = true;
+  const Binder retarded(Catalogs::built_in(), settings);
+  CHECK(usual.settings_key() != retarded.settings_key());
+  const Binding before = usual.bind(placed("9,0@10,10")),
+                after = retarded.bind(placed("9,0@10,10"));
+  REQUIRE(after.retardation_factor);
+  CHECK(!before.retardation_factor);
+  CHECK(*after.dispersion_eV_per_nm ==
+        Approx(*before.dispersion_eV_per_nm * *after.retardation_factor).epsilon(1e-13));
+  CHECK(*after.energy_eV_per_nm ==
+        Approx(*after.dispersion_eV_per_nm + *after.contact_eV_per_nm).epsilon(1e-13));
+  CHECK(*after.pull_out_force_nN > 0);
+  // Retardation takes about a thousandth of everything.
+  CHECK(*after.retardation_factor == Approx(0.9988).margin(3e-4));
+  CHECK(*after.pressure_dispersion_GPa / *before.pressure_dispersion_GPa ==
+        Approx(0.9990).margin(5e-4));
+  CHECK(*after.electronic_share_eV_per_nm / *before.electronic_share_eV_per_nm ==
+        Approx(1.0).margin(5e-3));
+
+  // A row's bits do not depend on what else is computed.
+  const Binder busy(Catalogs::built_in(), settings);
+  busy.announce({placed("9,0@9,9"), placed("9,0@10,10"), placed("8,0@10,10")});
+  busy.bind(placed("9,0@9,9"));
+  const Binding again = busy.bind(placed("9,0@10,10"));
+  CHECK(*again.dispersion_eV_per_nm == *after.dispersion_eV_per_nm);
+  CHECK(*again.pressure_GPa == *after.pressure_GPa);
+  CHECK(*again.electronic_share_eV_per_nm == *after.electronic_share_eV_per_nm);
+
+  CHECK_THROWS_AS(retarded.bind(placed("5,5@10,10@15,15")), InputError);
+  const Object tube = parse_label("10,10").object;
+  CHECK_THROWS_AS(retarded.bind({Arrangement::parallel, tube, tube, 0.34}), InputError);
+  CHECK_THROWS_AS(retarded.announce({{Arrangement::parallel, tube, tube, 0.34}}), InputError);
 }

@@ -87,6 +87,14 @@ class CommandLine(harness.Case):
                      "only undoped")
         self.good(*bind, "--temperature-K", "0", "--chemical-potential-eV", "0")
 
+    def test_retarded(self):
+        allowed = "two coaxial walls, inner@outer"
+        self.refused(["bind", "5,5@10,10@15,15", "--retarded"], "--retarded",
+                     "more than two walls", allowed)
+        self.refused(["bind", "10,10", "10,10", "--retarded"], "--retarded", "parallel bodies",
+                     allowed)
+        self.refused(["rank", "--inner", "5,5", "--retarded"], "unknown option '--retarded'")
+
     def test_names_of_catalogues(self):
         bind = ["bind", "5,5@10,10"]
         self.refused([*bind, "--hopping", "nearest-neighbor"], "--hopping",

@@ -15,7 +15,7 @@ FIELDS = """object_1 object_2 kind_1 kind_2 diameter_1_nm diameter_2_nm chiral_a
     chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm temperature_K
     chemical_potential_eV medium contact_target dispersion_eV_per_nm contact_eV_per_nm
     energy_eV_per_nm energy_mJ_per_m2 energy_meV_per_atom pressure_dispersion_GPa pressure_GPa
-    electronic_share_eV_per_nm thermal_share pull_out_force_nN cut_energy_eV_per_nm
+    electronic_share_eV_per_nm thermal_share retardation_factor pull_out_force_nN cut_energy_eV_per_nm
     pair_potential_eV_per_nm equilibrium_gap_nm well_depth_eV_per_nm stiffness_eV_per_nm3
     first_round_trip_eV_per_nm relative_error energy_error pressure_error electronic_share_error
     equilibrium_gap_error well_depth_error status""".split()
@@ -67,6 +67,19 @@ class Bind(harness.Case):
         for part in ("(5,5)@(10,10)", "by geometry", "by electrons", "±", "pull", "GPa",
                      "pair potential", "status ok"):
             self.assertIn(part, text)
+
+    def test_retarded(self):
+        usual, retarded = (json.loads(self.good("bind", "5,5@10,10", "--json", *flag).stdout)
+                           for flag in ([], ["--retarded"]))
+        self.assertIsNone(usual["retardation_factor"])
+        self.assertAlmostEqual(retarded["retardation_factor"], 0.998763, delta=2e-5)
+        self.assertAlmostEqual(
+            retarded["dispersion_eV_per_nm"],
+            usual["dispersion_eV_per_nm"] * retarded["retardation_factor"], places=12)
+        self.assertEqual(retarded["contact_eV_per_nm"], usual["contact_eV_per_nm"])
+        text = self.good("bind", "5,5@10,10", "--retarded").stdout
+        self.assertIn("vacuum, retarded\n", text)
+        self.assertIn("times the non-retarded one", text)
 
     def test_interfaces_of_three_walls(self):
         row = json.loads(self.good("bind", "5,5@10,10@15,15", "--json").stdout)

@@ -39,6 +39,7 @@ struct Binding {
   std::optional<double> energy_mJ_per_m2, energy_meV_per_atom;
   std::optional<double> pressure_dispersion_GPa, pressure_GPa;
   std::optional<double> electronic_share_eV_per_nm, thermal_share;
+  std::optional<double> retardation_factor;  ///< dispersion over the non-retarded one
   std::optional<double> pull_out_force_nN, cut_energy_eV_per_nm, pair_potential_eV_per_nm;
   std::optional<double> equilibrium_gap_nm, well_depth_eV_per_nm, stiffness_eV_per_nm3;
   std::optional<double> first_round_trip_eV_per_nm;

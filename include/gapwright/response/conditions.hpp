@@ -9,7 +9,7 @@ struct Conditions {
   double temperature_K = 0.0;
   double chemical_potential_eV = 0.0;  ///< from neutrality at T = 0
   std::string medium = "vacuum";
-  bool retarded = false;
+  bool retarded = false;  ///< two coaxial walls only (METHODS §9)
   bool operator==(const Conditions&) const = default;
 };
 
