@@ -146,11 +146,11 @@ OverSheetDensity over_sheet_density(const Scatterer& body, const Reflector& shee
     for (auto& values : row) std::fill(values.begin(), values.end(), 0.0);
     MultipoleBlock block;
     block.frequencies = window.xi.count;
-    block.columns = int(waves.eta.size());
+    block.columns = block.stride = int(waves.eta.size());
     block.weight = 1 / constants::pi;  // both signs of q
-    block.log_det = row[0].data();
+    block.further = row[0].data();
     block.trace = row[1].data();
-    block.log_det_slope = row[2].data();
+    block.further_slope = row[2].data();
     block.trace_slope = row[3].data();
     block.second = second.data();
     const AlignedScratch scratch(multipole_scratch(orders, block.columns));
@@ -162,8 +162,11 @@ OverSheetDensity over_sheet_density(const Scatterer& body, const Reflector& shee
       block.coupling_slope =
           with_slope ? (even ? coupling.even_slope : coupling.odd_slope).data() : nullptr;
       block.first = first.data() + (even ? 0 : 1);
-      density.positive = parallel_kernel().add(block) && density.positive;
+      parallel_kernel().first_trip(block);
+      density.positive = parallel_kernel().further_trips(block) && density.positive;
     }
+    for (const std::size_t p : {0, 2})
+      for (std::size_t k = 0; k < frequencies; ++k) row[p][k] += row[p + 1][k];
     for (std::size_t p = 0; p < used; ++p)
       for (std::size_t k = 0; k < frequencies; ++k) {
         all[p]->full[k] += weights.full[std::size_t(j)] * row[p][k];

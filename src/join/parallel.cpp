@@ -1,15 +1,14 @@
-#include "multipoles.hpp"
+#include "aligned_scratch.hpp"
+#include "further_trips.hpp"
+#include "multipole_coupling.hpp"
 #include "parallel_kernel.hpp"
 
 #include <gapwright/catalog/constants.hpp>
-#include <gapwright/join/coaxial.hpp>
 #include <gapwright/join/parallel.hpp>
-#include <gapwright/math/bessel.hpp>
 #include <gapwright/math/kernel.hpp>
 
 #include <algorithm>
 #include <cmath>
-#include <cstdlib>
 #include <memory>
 #include <stdexcept>
 
@@ -23,154 +22,256 @@ const ParallelKernel& parallel_kernel() {
   return portable::parallel_kernel;
 }
 
-Window parallel_window(double radius_1_nm, double radius_2_nm, double distance_nm,
-                       const Nodes& nodes) {
-  const double gap = distance_nm - radius_1_nm - radius_2_nm;
-  if (!(radius_1_nm > 0) || !(radius_2_nm > 0) || !(gap > 0))
-    throw std::domain_error("parallel_window: the bodies must not touch");
-  // Far gapped tubes answer as q², which lifts the integrand to q⁴e^{-2qD}: it ends later.
-  const double limit = largest_exponent(nodes.tolerance) + (gap > 1.0 ? 6.0 : 0.0);
-  Window window;
-  window.xi = frequencies_at(gap, nodes);
-  const LogLattice q_lattice = nodes_on(window.xi, nodes).q;
-  // Of far metallic tubes the axial charge waves are the whole energy: four times as long ones
-  // count.
-  const double lowest = lowest_wave(distance_nm, nodes.tolerance);
-  window.q.first = q_lattice.index_below(gap > 1.0 ? 0.25 * lowest : lowest);
-  window.q.count = q_lattice.index_above(limit / (2 * gap)) - window.q.first + 1;
-  // A multipole m of one body meets the other's nearest image line.
-  const double wider = std::max(radius_1_nm, radius_2_nm);
-  const double far = distance_nm - std::min(radius_1_nm, radius_2_nm);
-  int largest = 0;
-  for (int j = 0; j < window.q.count; ++j) {
-    const double q = q_lattice.node(window.q.first + j);
-    const int m = largest_multipole(q, wider, far, limit, largest);
-    largest = j == 0 ? m : std::min(m, largest);
-    window.orders.push_back(largest + 1);
-  }
-  return window;
-}
-
 namespace {
 
-/// The coupling of both parities at one wave number, with the scales of the two scatterers.
-class Coupling {
- public:
-  Coupling(const std::vector<double>& scale_1, const std::vector<double>& scale_2, double q,
-           double distance, bool with_slope)
-      : orders_(int(scale_1.size())) {
-    const BesselLogs waves = bessel_logs(q * distance, 2 * orders_);
-    even.resize(scale_1.size() * scale_1.size());
-    odd.resize(std::size_t(orders_ - 1) * std::size_t(orders_ - 1));
-    if (with_slope) {
-      even_slope.resize(even.size());
-      odd_slope.resize(odd.size());
+/// Further round trips may lose this share of the first one, relative to the tolerance.
+constexpr double further_share = 0.03;
+/// A frequency whose weight in the sum is small may lose more, up to this factor.
+constexpr double most_relief = 10.0;
+/// Frequencies whose multipoles are counted together: as many as the widest kernel takes at once.
+constexpr int together = 8;
+/// ∫dq/2π over both signs of q.
+constexpr double both_signs = 1 / constants::pi;
+
+/// Sums over the wave numbers.
+struct WaveSums {
+  explicit WaveSums(int frequencies)
+      : full(std::size_t(frequencies)), halved(std::size_t(frequencies)) {}
+
+  void add(const std::vector<double>& row, double weight, double halved_weight) {
+    for (std::size_t k = 0; k < full.size(); ++k) {
+      full[k] += weight * row[k];
+      halved[k] += halved_weight * row[k];
     }
-    for (int m = 0; m < orders_; ++m)
-      for (int n = 0; n < orders_; ++n) {
-        const double scale = 0.5 * (scale_1[std::size_t(m)] + scale_2[std::size_t(n)]);
-        const std::size_t low = std::size_t(std::abs(m - n)), high = std::size_t(m + n);
-        const double minus = std::exp(scale + waves.log_k[low]);
-        const double plus = std::exp(scale + waves.log_k[high]);
-        // e_m = (|m> + |-m>)/√2 for m > 0.
-        const double norm = m == 0 && n == 0 ? 0.5 : (m == 0 || n == 0 ? std::sqrt(0.5) : 1.0);
-        const std::size_t at = std::size_t(m) * scale_1.size() + std::size_t(n);
-        even[at] = norm * (minus + plus);
-        const bool inside = m > 0 && n > 0;
-        const std::size_t at_odd = std::size_t((m - 1) * (orders_ - 1) + n - 1);
-        if (inside) odd[at_odd] = minus - plus;
-        if (!with_slope) continue;
-        const double minus_slope = q * waves.slope_k[low] * minus;
-        const double plus_slope = q * waves.slope_k[high] * plus;
-        even_slope[at] = norm * (minus_slope + plus_slope);
-        if (inside) odd_slope[at_odd] = minus_slope - plus_slope;
-      }
+  }
+  std::vector<double> full, halved;
+};
+
+FrequencyDensity density_of(const WaveSums& a, const WaveSums* b, int derivatives) {
+  FrequencyDensity density{a.full, a.halved, derivatives};
+  for (std::size_t k = 0; b && k < a.full.size(); ++k) {
+    density.full[k] += b->full[k];
+    density.halved[k] += b->halved[k];
+  }
+  return density;
+}
+
+std::vector<double> scales(const Scatterer& body, int j, int orders) {
+  std::vector<double> scale;
+  for (int m = 0; m < orders; ++m) scale.push_back(body.log_scale(j, m));
+  return scale;
+}
+
+/// The multipoles of two bodies on the wave numbers of a window.
+struct Coupled {
+  Coupled(const Scatterer& first, const Scatterer& second, double distance_nm, const Window& wanted,
+          bool slope)
+      : window(wanted),
+        nodes(first.nodes()),
+        with_slope(slope),
+        weights(trapezoid_weights(nodes.q, window.q, {})),
+        frequency_weights(
+            trapezoid_weights(nodes.xi, window.xi, {.constant_below = true, .power_above = 4.0})) {
+    require(first, second);
+    for (int j = 0; j < window.q.count; ++j) {
+      const int orders = window.orders[std::size_t(j)];
+      scale_1.push_back(scales(first, j + shift(first), orders));
+      scale_2.push_back(scales(second, j + shift(second), orders));
+      waves.emplace_back(scale_1.back(), scale_2.back(), nodes.q.node(window.q.first + j),
+                         distance_nm, slope);
+    }
   }
 
-  std::vector<double> even, odd, even_slope, odd_slope;
+  int shift(const Scatterer& body) const { return window.q.first - body.window().q.first; }
+
+  void require(const Scatterer& first, const Scatterer& second) const {
+    for (const Scatterer* part : {&first, &second})
+      if (!part->window().covers(window) || part->channel() != Channel::outward)
+        throw std::invalid_argument(
+            "ParallelCoupling: outward scatterers on the window are required");
+    for (std::size_t j = 0; j < waves.size(); ++j)
+      if (scales(first, int(j) + shift(first), waves[j].orders) != scale_1[j] ||
+          scales(second, int(j) + shift(second), waves[j].orders) != scale_2[j])
+        throw std::invalid_argument("ParallelCoupling: scatterers of the same bodies are required");
+  }
+
+  Window window;
+  Nodes nodes;
+  bool with_slope;
+  AxisWeights weights, frequency_weights;
+  std::vector<std::vector<double>> scale_1, scale_2;  // of each wave number
+  std::vector<MultipoleCoupling> waves;
+};
+
+/// One evaluation for two scatterers.
+class Evaluation {
+ public:
+  Evaluation(const Coupled& coupling, const Scatterer& first, const Scatterer& second)
+      : coupling_(coupling),
+        first_(first),
+        second_(second),
+        frequencies_(coupling.window.xi.count),
+        scratch_(multipole_scratch(coupling.window.max_order(), coupling.window.max_order())),
+        trace(frequencies_),
+        trace_slope(frequencies_),
+        further(frequencies_),
+        further_slope(frequencies_) {}
+
+  /// Shares of the multipoles are what further trips need.
+  void first_trips(bool with_shares) {
+    std::size_t size = 0;
+    for (const MultipoleCoupling& wave : coupling_.waves)
+      for (const int odd : {0, 1}) {
+        shares_at_.push_back(size);
+        size += 2 * std::size_t(wave.orders - odd) * std::size_t(frequencies_);
+      }
+    if (with_shares) shares_.resize(size);
+    for (int j = 0; j < coupling_.window.q.count; ++j) {
+      start_row();
+      for (const int odd : {0, 1})
+        if (const MultipoleBlock block = this->block(j, odd); block.rows > 0)
+          parallel_kernel().first_trip(block);
+      add(j, trace, row_);
+      add(j, trace_slope, slope_row_);
+    }
+  }
+
+  /// False when a determinant was not positive.
+  bool further_trips() {
+    bool positive = true;
+    const std::vector<double> loss = allowed_loss();
+    std::vector<double> allowed(loss.size());
+    for (int j = 0; j < coupling_.window.q.count; ++j) {
+      start_row();
+      const double weight = coupling_.weights.full[std::size_t(j)];
+      for (std::size_t k = 0; k < loss.size(); ++k) allowed[k] = loss[k] / weight;
+      for (const int odd : {0, 1})
+        if (const MultipoleBlock block = this->block(j, odd); block.rows > 0)
+          positive = further_trips(block, allowed) && positive;
+      add(j, further, row_);
+      add(j, further_slope, slope_row_);
+    }
+    return positive;
+  }
 
  private:
-  int orders_;
-};
-
-struct AlignedScratch {
-  explicit AlignedScratch(int doubles)
-      : memory(static_cast<double*>(std::aligned_alloc(64, std::size_t(doubles) * 8))) {
-    if (!memory) throw std::bad_alloc();
+  bool further_trips(MultipoleBlock block, const std::vector<double>& allowed) const {
+    bool positive = true;
+    for (; block.start < frequencies_; block.start += together) {
+      block.frequencies = std::min(together, frequencies_ - block.start);
+      const LeadingPart leading = leading_part(block, allowed);
+      if (leading.rows == 0 || leading.columns == 0) continue;
+      MultipoleBlock part = block;
+      part.rows = leading.rows;
+      part.columns = leading.columns;
+      positive = parallel_kernel().further_trips(part) && positive;
+    }
+    return positive;
   }
-  struct Free {
-    void operator()(double* p) const { std::free(p); }
-  };
-  std::unique_ptr<double, Free> memory;
-};
 
-std::vector<FrequencyDensity*> parts(ParallelDensity& density) {
-  return {&density.energy, &density.first_round_trip, &density.distance_slope,
-          &density.first_slope};
-}
+  void start_row() {
+    row_.assign(std::size_t(frequencies_), 0.0);
+    slope_row_.assign(std::size_t(frequencies_), 0.0);
+  }
+  void add(int j, WaveSums& sums, const std::vector<double>& row) const {
+    sums.add(row, coupling_.weights.full[std::size_t(j)], coupling_.weights.halved[std::size_t(j)]);
+  }
+
+  MultipoleBlock block(int j, int odd) {
+    const MultipoleCoupling& wave = coupling_.waves[std::size_t(j)];
+    t1_.clear();
+    t2_.clear();
+    for (int m = odd; m < wave.orders; ++m) {
+      t1_.push_back(cell(first_, j, m));
+      t2_.push_back(cell(second_, j, m));
+    }
+    MultipoleBlock block;
+    block.rows = block.columns = block.stride = wave.orders - odd;
+    block.frequencies = block.share_stride = frequencies_;
+    block.coupling = (odd ? wave.odd : wave.even).data();
+    if (coupling_.with_slope)
+      block.coupling_slope = (odd ? wave.odd_slope : wave.even_slope).data();
+    block.first = t1_.data();
+    block.second = t2_.data();
+    block.weight = both_signs;
+    block.scratch = scratch_.data();
+    if (!shares_.empty()) {
+      block.row_share = shares_.data() + shares_at_[std::size_t(2 * j + odd)];
+      block.column_share = block.row_share + block.rows * frequencies_;
+    }
+    block.trace = block.further = row_.data();
+    block.trace_slope = block.further_slope = slope_row_.data();
+    return block;
+  }
+
+  const double* cell(const Scatterer& body, int j, int m) const {
+    const int skipped = coupling_.window.xi.first - body.window().xi.first;
+    return body.reduced(j + coupling_.shift(body), m).data() + skipped;
+  }
+
+  /// What -ln det of one block may lose at each frequency, times the weight of its wave number: an
+  /// equal part of what the frequency may lose.
+  std::vector<double> allowed_loss() const {
+    const double share = further_share * coupling_.nodes.tolerance;
+    const std::vector<double>& weight = coupling_.frequency_weights.full;
+    double energy = 0.0;
+    for (std::size_t k = 0; k < weight.size(); ++k) energy += weight[k] * std::fabs(trace.full[k]);
+    const double blocks = 2.0 * coupling_.window.q.count * both_signs;
+    std::vector<double> loss;
+    for (std::size_t k = 0; k < weight.size(); ++k) {
+      const double own = std::fabs(trace.full[k]);
+      const double even_part = energy / (double(weight.size()) * weight[k]);
+      loss.push_back(share * std::clamp(even_part, own, most_relief * own) / blocks);
+    }
+    return loss;
+  }
+
+  const Coupled& coupling_;
+  const Scatterer& first_;
+  const Scatterer& second_;
+  int frequencies_;
+  AlignedScratch scratch_;
+  std::vector<const double*> t1_, t2_;
+  std::vector<double> shares_;          // of rows, then of columns, [multipole][frequency]
+  std::vector<std::size_t> shares_at_;  // where those of a wave number and parity begin
+  std::vector<double> row_, slope_row_;
+
+ public:
+  WaveSums trace, trace_slope, further, further_slope;
+};
 
 }  // namespace
 
+struct ParallelCoupling::Impl : Coupled {
+  using Coupled::Coupled;
+};
+
+ParallelCoupling::ParallelCoupling(const Scatterer& first, const Scatterer& second,
+                                   double distance_nm, const Window& window, bool with_slope)
+    : impl_(std::make_unique<Impl>(first, second, distance_nm, window, with_slope)) {}
+ParallelCoupling::~ParallelCoupling() = default;
+
+ParallelDensity ParallelCoupling::density(const Scatterer& first, const Scatterer& second,
+                                          FurtherTrips further) const {
+  impl_->require(first, second);
+  Evaluation evaluation(*impl_, first, second);
+  const bool all = further == FurtherTrips::included;
+  evaluation.first_trips(all);
+  ParallelDensity density;
+  if (all) density.positive = evaluation.further_trips();
+  density.first_round_trip = density_of(evaluation.trace, nullptr, 0);
+  density.energy = density_of(evaluation.trace, all ? &evaluation.further : nullptr, 0);
+  density.distance_slope.derivatives = density.first_slope.derivatives = 1;
+  if (!impl_->with_slope) return density;
+  density.first_slope = density_of(evaluation.trace_slope, nullptr, 1);
+  density.distance_slope =
+      density_of(evaluation.trace_slope, all ? &evaluation.further_slope : nullptr, 1);
+  return density;
+}
+
 ParallelDensity parallel_density(const Scatterer& first, const Scatterer& second,
                                  double distance_nm, const Window& window, bool with_slope) {
-  for (const Scatterer* part : {&first, &second})
-    if (!part->window().covers(window) || part->channel() != Channel::outward)
-      throw std::invalid_argument("parallel_density: outward scatterers on the window required");
-  const std::size_t frequencies = std::size_t(window.xi.count);
-  const AxisWeights weights = trapezoid_weights(first.nodes().q, window.q, {});
-  const ParallelKernel& kernel = parallel_kernel();
-  const AlignedScratch scratch(multipole_scratch(window.max_order(), window.max_order()));
-  ParallelDensity density;
-  const auto all = parts(density);
-  density.distance_slope.derivatives = density.first_slope.derivatives = 1;
-  const std::size_t used = with_slope ? 4 : 2;
-  for (std::size_t p = 0; p < used; ++p) {
-    all[p]->full.assign(frequencies, 0.0);
-    all[p]->halved.assign(frequencies, 0.0);
-  }
-  std::vector<std::vector<double>> row(4, std::vector<double>(frequencies));
-  const int shift_1 = window.q.first - first.window().q.first;
-  const int shift_2 = window.q.first - second.window().q.first;
-  const int xi_1 = window.xi.first - first.window().xi.first;
-  const int xi_2 = window.xi.first - second.window().xi.first;
-  for (int j = 0; j < window.q.count; ++j) {
-    const int orders = window.orders[std::size_t(j)];
-    std::vector<double> scale_1, scale_2;
-    std::vector<const double*> t1, t2;
-    for (int m = 0; m < orders; ++m) {
-      scale_1.push_back(first.log_scale(j + shift_1, m));
-      scale_2.push_back(second.log_scale(j + shift_2, m));
-      t1.push_back(first.reduced(j + shift_1, m).data() + xi_1);
-      t2.push_back(second.reduced(j + shift_2, m).data() + xi_2);
-    }
-    const Coupling coupling(scale_1, scale_2, first.nodes().q.node(window.q.first + j), distance_nm,
-                            with_slope);
-    for (auto& values : row) std::fill(values.begin(), values.end(), 0.0);
-    MultipoleBlock block;
-    block.frequencies = window.xi.count;
-    block.weight = 1 / constants::pi;  // both signs of q
-    block.log_det = row[0].data();
-    block.trace = row[1].data();
-    block.log_det_slope = row[2].data();
-    block.trace_slope = row[3].data();
-    block.scratch = scratch.memory.get();
-    for (const bool even : {true, false}) {
-      if (!even && orders == 1) continue;
-      block.rows = block.columns = even ? orders : orders - 1;
-      block.coupling = (even ? coupling.even : coupling.odd).data();
-      block.coupling_slope =
-          with_slope ? (even ? coupling.even_slope : coupling.odd_slope).data() : nullptr;
-      block.first = t1.data() + (even ? 0 : 1);
-      block.second = t2.data() + (even ? 0 : 1);
-      density.positive = kernel.add(block) && density.positive;
-    }
-    for (std::size_t p = 0; p < used; ++p)
-      for (std::size_t k = 0; k < frequencies; ++k) {
-        all[p]->full[k] += weights.full[std::size_t(j)] * row[p][k];
-        all[p]->halved[k] += weights.halved[std::size_t(j)] * row[p][k];
-      }
-  }
-  return density;
+  return ParallelCoupling(first, second, distance_nm, window, with_slope).density(first, second);
 }
 
 }  // namespace gapwright

@@ -1,221 +1,215 @@
 // Compiled once per instruction set with GAPWRIGHT_KERNEL naming the namespace.
-#include "parallel_kernel.hpp"
+#include "multipole_group.hpp"
 
 #include <cmath>
 
 namespace gapwright::GAPWRIGHT_KERNEL {
 namespace {
 
-#if defined(__AVX512F__)
-constexpr int lanes = 8;
-#elif defined(__AVX2__)
-constexpr int lanes = 4;
-#else
-constexpr int lanes = 2;
-#endif
-typedef double Vector __attribute__((vector_size(8 * lanes)));
-
-/// Below this trace ln det is -tr - tr₂/2 to a relative 3e-9, and below the second one -tr.
+/// Below this trace -tr - tr₂/2 is ln det to a relative 3e-9.
 constexpr double series_trace = 1e-4;
-constexpr double first_trace = 1e-7;
 
-/// The frequencies of one group of lanes.
-struct Group {
-  const MultipoleBlock& block;
-  int start, used;
-  Vector* g;       // √|T₁|·c, [rows][columns]
-  Vector* h;       // g·T₂, later L⁻¹g
-  Vector* slope;   // √|T₁|·c'
-  Vector* s;       // σ₁ - g T₂ gᵀ, then its LDLᵀ factors
-  Vector* root;    // √|T₁|
-  Vector* sign;    // of T₁
-  Vector* second;  // T₂
+/// Products are formed in square tiles of this side: nine sums live in registers.
+constexpr int side = 3;
+constexpr int padded(int n) {
+  return (n + side - 1) / side * side;
+}
 
-  Vector load(const double* values) const {
-    Vector v{};
-    for (int l = 0; l < used; ++l) v[l] = values[start + l];
-    return v;
+struct Tile {
+  Vector at[side][side];
+
+  void clear() {
+    for (auto& row : at)
+      for (Vector& v : row) v = Vector{};
   }
-  void add(double* sums, Vector v) const {
-    for (int l = 0; l < used; ++l) sums[start + l] += block.weight * v[l];
-  }
-
-  void scale_coupling() {
-    const int rows = block.rows, columns = block.columns;
-    for (int i = 0; i < rows; ++i) {
-      const Vector t = load(block.first[i]);
-      for (int l = 0; l < lanes; ++l) {
-        root[i][l] = std::sqrt(std::fabs(t[l]));
-        sign[i][l] = t[l] < 0 ? -1.0 : 1.0;
+  /// at[a][b] += or -= Σ_p x[a·x_row + p] y[b·y_row + p·y_step]
+  template <bool plus>
+  void add_products(const Vector* x, int x_row, const Vector* y, int y_row, int y_step, int count) {
+    Vector sum[side][side];
+    for (int a = 0; a < side; ++a)
+      for (int b = 0; b < side; ++b) sum[a][b] = at[a][b];
+    for (int p = 0; p < count; ++p) {
+      const Vector y0 = y[p * y_step], y1 = y[y_row + p * y_step], y2 = y[2 * y_row + p * y_step];
+      for (int a = 0; a < side; ++a) {
+        const Vector factor = x[a * x_row + p];
+        sum[a][0] = plus ? sum[a][0] + factor * y0 : sum[a][0] - factor * y0;
+        sum[a][1] = plus ? sum[a][1] + factor * y1 : sum[a][1] - factor * y1;
+        sum[a][2] = plus ? sum[a][2] + factor * y2 : sum[a][2] - factor * y2;
       }
     }
-    for (int k = 0; k < columns; ++k) second[k] = load(block.second[k]);
-    for (int i = 0; i < rows; ++i)
-      for (int k = 0; k < columns; ++k) {
-        g[i * columns + k] = root[i] * block.coupling[i * columns + k];
-        h[i * columns + k] = g[i * columns + k] * second[k];
-        if (block.coupling_slope)
-          slope[i * columns + k] = root[i] * block.coupling_slope[i * columns + k];
-      }
-  }
-
-  Vector trace() const {
-    Vector sum{};
-    for (int i = 0; i < block.rows; ++i) {
-      Vector row{};
-      for (int k = 0; k < block.columns; ++k)
-        row += g[i * block.columns + k] * h[i * block.columns + k];
-      sum += sign[i] * row;
-    }
-    return sum;
-  }
-
-  Vector trace_slope() const {
-    Vector sum{};
-    for (int i = 0; i < block.rows; ++i) {
-      Vector row{};
-      for (int k = 0; k < block.columns; ++k)
-        row += slope[i * block.columns + k] * h[i * block.columns + k];
-      sum += 2.0 * sign[i] * row;
-    }
-    return sum;
-  }
-
-  /// S = σ₁ - g T₂ gᵀ, lower triangle; returns Tr (1 - σ₁S)².
-  Vector form_matrix() {
-    const int rows = block.rows, columns = block.columns;
-    const auto put = [&](int i, int j, Vector v) { s[i * rows + j] = i == j ? sign[i] - v : -v; };
-    Vector square{};
-    for (int i = 0; i < rows; i += 2) {
-      const Vector* g0 = g + i * columns;
-      const Vector* g1 = i + 1 < rows ? g0 + columns : g0;
-      for (int j = 0; j <= i; j += 2) {
-        const Vector* h0 = h + j * columns;
-        const Vector* h1 = j + 1 < rows ? h0 + columns : h0;
-        Vector a00{}, a01{}, a10{}, a11{};
-        for (int k = 0; k < columns; ++k) {
-          a00 += g0[k] * h0[k];
-          a01 += g0[k] * h1[k];
-          a10 += g1[k] * h0[k];
-          a11 += g1[k] * h1[k];
-        }
-        put(i, j, a00);
-        square += (i == j ? 1.0 : 2.0) * sign[i] * sign[j] * a00 * a00;
-        if (j + 1 < i) {
-          put(i, j + 1, a01);
-          square += 2.0 * sign[i] * sign[j + 1] * a01 * a01;
-        }
-        if (i + 1 < rows) {
-          put(i + 1, j, a10);
-          square += 2.0 * sign[i + 1] * sign[j] * a10 * a10;
-          if (j + 1 <= i + 1 && j + 1 < rows) {
-            put(i + 1, j + 1, a11);
-            square += (j == i ? 1.0 : 2.0) * sign[i + 1] * sign[j + 1] * a11 * a11;
-          }
-        }
-      }
-    }
-    return square;
-  }
-
-  /// LDLᵀ in place (unit L below the diagonal, D on it); returns ∏ σ_i d_i.
-  Vector factor() {
-    const int rows = block.rows;
-    Vector product = Vector{} + 1.0;
-    for (int j = 0; j < rows; ++j) {
-      const Vector pivot = s[j * rows + j];
-      product *= sign[j] * pivot;
-      const Vector inverse = 1.0 / pivot;
-      for (int i = j + 1; i < rows; ++i) {
-        const Vector factor_ij = s[i * rows + j] * inverse;
-        for (int k = j + 1; k <= i; ++k) s[i * rows + k] -= factor_ij * s[k * rows + j];
-      }
-      for (int i = j + 1; i < rows; ++i) s[i * rows + j] *= inverse;
-    }
-    return product;
-  }
-
-  void solve_lower(Vector* x) const {
-    const int rows = block.rows, columns = block.columns;
-    for (int i = 1; i < rows; ++i)
-      for (int j = 0; j < i; ++j) {
-        const Vector l = s[i * rows + j];
-        for (int k = 0; k < columns; ++k) x[i * columns + k] -= l * x[j * columns + k];
-      }
-  }
-
-  /// d ln det = -2 Tr[S⁻¹ g' T₂ gᵀ], from the factors.
-  Vector log_det_slope() {
-    const int rows = block.rows, columns = block.columns;
-    solve_lower(g);
-    solve_lower(slope);
-    Vector sum{};
-    for (int i = 0; i < rows; ++i) {
-      Vector row{};
-      for (int k = 0; k < columns; ++k)
-        row += g[i * columns + k] * slope[i * columns + k] * second[k];
-      sum += row / s[i * rows + i];
-    }
-    return -2.0 * sum;
-  }
-
-  bool run() {
-    scale_coupling();
-    const Vector tr = trace();
-    add(block.trace, -tr);
-    Vector tr_slope{};
-    if (block.coupling_slope) {
-      tr_slope = trace_slope();
-      add(block.trace_slope, -tr_slope);
-    }
-    double largest = 0.0;
-    for (int l = 0; l < used; ++l) largest = std::fmax(largest, std::fabs(tr[l]));
-    if (largest < first_trace) {
-      add(block.log_det, -tr);
-      if (block.coupling_slope) add(block.log_det_slope, -tr_slope);
-      return true;
-    }
-    const Vector square = form_matrix();
-    const Vector product = factor();
-    Vector value;
-    bool positive = true;
-    for (int l = 0; l < lanes; ++l) {
-      if (l < used && !(product[l] > 0)) positive = false;
-      value[l] = std::fabs(tr[l]) < series_trace ? -tr[l] - 0.5 * square[l] : std::log(product[l]);
-    }
-    add(block.log_det, value);
-    if (block.coupling_slope) add(block.log_det_slope, log_det_slope());
-    return positive;
+    for (int a = 0; a < side; ++a)
+      for (int b = 0; b < side; ++b) at[a][b] = sum[a][b];
   }
 };
 
-bool add(const MultipoleBlock& block) {
-  Vector* at = reinterpret_cast<Vector*>(block.scratch);
-  const auto take = [&](int count) {
-    Vector* result = at;
-    at += count;
-    return result;
-  };
-  const int area = block.rows * block.columns;
-  Vector* const g = take(area);
-  Vector* const h = take(area);
-  Vector* const slope = take(area);
-  Vector* const s = take(block.rows * block.rows);
-  Vector* const root = take(block.rows);
-  Vector* const sign = take(block.rows);
-  Vector* const second = take(block.columns);
-  bool positive = true;
-  for (int start = 0; start < block.frequencies; start += lanes) {
-    const int left = block.frequencies - start;
-    Group group{block, start, left < lanes ? left : lanes, g, h, slope, s, root, sign, second};
-    positive = group.run() && positive;
+/// ln det[σ₁ - g T₂ gᵀ] with g = √|T₁| c, padded with empty rows and columns to whole tiles.
+struct Determinant {
+  explicit Determinant(const MultipoleBlock& wanted)
+      : block(wanted), rows(padded(wanted.rows)), columns(padded(wanted.columns)) {
+    Vector* at = reinterpret_cast<Vector*>(block.scratch);
+    const auto take = [&](int count) {
+      Vector* result = at;
+      at += count;
+      return result;
+    };
+    g = take(rows * columns);
+    h = take(rows * columns);
+    l = take(rows * rows);
+    u = take(rows * rows);
+    root = take(rows);
+    sign = take(rows);
+    inverse = take(rows);
+    second = take(columns);
+    y = take(side * rows);
+    z = take(side * rows);
   }
-  return positive;
+
+  const MultipoleBlock& block;
+  int rows, columns;
+  Vector* g;  // [rows][columns]
+  Vector* h;  // g·T₂
+  Vector* l;  // L, unit lower triangle
+  Vector* u;  // L·D, with D on the diagonal
+  Vector *root, *sign, *inverse;
+  Vector* second;
+  Vector *y, *z;  // a strip of columns of L⁻¹g and L⁻¹g'
+
+  void scale(const Group& group) {
+    for (int i = 0; i < rows; ++i) {
+      root[i] = Vector{};
+      sign[i] = Vector{} + 1.0;
+      if (i >= block.rows) continue;
+      const Vector t = group.load(block.first[i]);
+      for (int lane = 0; lane < lanes; ++lane) {
+        root[i][lane] = std::sqrt(std::fabs(t[lane]));
+        sign[i][lane] = t[lane] < 0 ? -1.0 : 1.0;
+      }
+    }
+    for (int k = 0; k < columns; ++k)
+      second[k] = k < block.columns ? group.load(block.second[k]) : Vector{};
+    for (int i = 0; i < rows; ++i)
+      for (int k = 0; k < columns; ++k) {
+        const bool inside = i < block.rows && k < block.columns;
+        g[i * columns + k] = inside ? root[i] * block.coupling[i * block.stride + k] : Vector{};
+        h[i * columns + k] = g[i * columns + k] * second[k];
+      }
+  }
+
+  /// LDLᵀ tile by tile, each formed when it is needed.
+  void factor(Vector& product, Vector& trace, Vector& square) {
+    product = Vector{} + 1.0;
+    trace = square = Vector{};
+    Tile tile;
+    for (int i = 0; i < rows; i += side)
+      for (int j = 0; j <= i; j += side) {
+        tile.clear();
+        tile.add_products<true>(g + i * columns, columns, h + j * columns, columns, 1, columns);
+        for (int a = 0; a < side; ++a)
+          for (int b = 0; b < side; ++b) {
+            Vector& v = tile.at[a][b];
+            square += (i == j ? 1.0 : 2.0) * sign[i + a] * sign[j + b] * v * v;
+            if (i == j && a == b) trace += sign[i + a] * v;
+            v = i == j && a == b ? sign[i + a] - v : -v;
+          }
+        tile.add_products<false>(l + i * rows, rows, u + j * rows, rows, 1, j);
+        if (i == j)
+          finish_diagonal(tile, i, product);
+        else
+          finish_below(tile, i, j);
+      }
+  }
+
+  void finish_diagonal(Tile& tile, int i, Vector& product) {
+    for (int b = 0; b < side; ++b) {
+      for (int a = b; a < side; ++a) {
+        Vector v = tile.at[a][b];
+        for (int p = 0; p < b; ++p) v -= l[(i + a) * rows + i + p] * u[(i + b) * rows + i + p];
+        u[(i + a) * rows + i + b] = v;
+        if (a == b) {
+          product *= sign[i + a] * v;
+          inverse[i + a] = 1.0 / v;
+        } else {
+          l[(i + a) * rows + i + b] = v * inverse[i + b];
+        }
+      }
+    }
+  }
+
+  void finish_below(Tile& tile, int i, int j) {
+    for (int a = 0; a < side; ++a)
+      for (int b = 0; b < side; ++b) {
+        Vector v = tile.at[a][b];
+        for (int p = 0; p < b; ++p) v -= l[(i + a) * rows + j + p] * u[(j + b) * rows + j + p];
+        u[(i + a) * rows + j + b] = v;
+        l[(i + a) * rows + j + b] = v * inverse[j + b];
+      }
+  }
+
+  /// A strip x becomes L⁻¹x.
+  void solve(Vector* x) const {
+    Tile tile;
+    for (int i = 0; i < rows; i += side) {
+      for (int a = 0; a < side; ++a)
+        for (int b = 0; b < side; ++b) tile.at[a][b] = x[(i + a) * side + b];
+      tile.add_products<false>(l + i * rows, rows, x, 1, side, i);
+      for (int a = 0; a < side; ++a)
+        for (int b = 0; b < side; ++b) {
+          Vector v = tile.at[a][b];
+          for (int p = 0; p < a; ++p) v -= l[(i + a) * rows + i + p] * x[(i + p) * side + b];
+          x[(i + a) * side + b] = v;
+        }
+    }
+  }
+
+  /// d ln det = -2 Tr[S⁻¹ g' T₂ gᵀ], and what of it is not of the first round trip.
+  Vector further_slope() {
+    Vector sum{};
+    for (int k = 0; k < columns; k += side) {
+      Vector first{};
+      for (int i = 0; i < rows; ++i)
+        for (int b = 0; b < side; ++b) {
+          const bool inside = i < block.rows && k + b < block.columns;
+          y[i * side + b] = g[i * columns + k + b];
+          z[i * side + b] =
+              inside ? root[i] * block.coupling_slope[i * block.stride + k + b] : Vector{};
+          first += sign[i] * y[i * side + b] * z[i * side + b] * second[k + b];
+        }
+      solve(y);
+      solve(z);
+      Vector all{};
+      for (int i = 0; i < rows; ++i) {
+        Vector row{};
+        for (int b = 0; b < side; ++b) row += y[i * side + b] * z[i * side + b] * second[k + b];
+        all += row * inverse[i];
+      }
+      sum += first - all;
+    }
+    return 2.0 * sum;
+  }
+};
+
+bool further_trips(const MultipoleBlock& block) {
+  Determinant determinant(block);
+  return each_group(block, [&](const Group& group) {
+    determinant.scale(group);
+    Vector product, trace, square;
+    determinant.factor(product, trace, square);
+    bool positive = true;
+    Vector value;
+    for (int lane = 0; lane < lanes; ++lane) {
+      if (lane < group.used && !(product[lane] > 0)) positive = false;
+      value[lane] = std::fabs(trace[lane]) < series_trace ? -0.5 * square[lane]
+                                                          : std::log(product[lane]) + trace[lane];
+    }
+    group.add(block.further, value);
+    if (block.coupling_slope) group.add(block.further_slope, determinant.further_slope());
+    return positive;
+  });
 }
 
 }  // namespace
 
 extern const ParallelKernel parallel_kernel;
-const ParallelKernel parallel_kernel{add};
+const ParallelKernel parallel_kernel{first_trip, further_trips};
 
 }  // namespace gapwright::GAPWRIGHT_KERNEL

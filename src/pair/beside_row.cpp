@@ -12,8 +12,10 @@ constexpr double share_precision = 2e-6;
 
 /// The point at the bottom of the well, if there is one; fills the well's fields.
 std::optional<CurvePoint> rest(const PairCurve& curve, const ContactTerm& contact, Binding& row) {
-  const auto well = find_well([&](double gap) { return curve.dispersion(gap, true); },
-                              [&](double gap) { return curve.contact(contact.nominal, gap); });
+  const auto well =
+      find_well([&](double gap) { return curve.dispersion(gap, true); },
+                [&](double gap) { return curve.dispersion(gap, true, RoundTrips::first); },
+                [&](double gap) { return curve.contact(contact.nominal, gap); });
   if (!well) {
     row.status = Status::no_minimum;
     row.message = "the energy has no minimum between gaps of 0.22 and 0.8 nm";

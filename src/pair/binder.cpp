@@ -15,7 +15,7 @@
 namespace gapwright {
 
 std::string_view numerics_version() {
-  return "1";
+  return "2";
 }
 
 namespace {

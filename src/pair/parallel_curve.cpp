@@ -21,37 +21,60 @@ void ParallelCurve::announce(double closest_gap_nm) const {
     for (const Tube& wall : object->walls) cache_.announce(wall, window);
 }
 
-ParallelDensity ParallelCurve::densities(double gap_nm, const Window& here, Electrons electrons,
-                                         bool with_slope) const {
-  const auto a = body_scatterer(first_, electrons, here, cache_);
-  const auto b = body_scatterer(second_, electrons, here, cache_);
-  return parallel_density(*a, *b, touching_nm() + gap_nm, here, with_slope);
+ParallelCurve::Bodies ParallelCurve::bodies(Electrons electrons, const Window& here) const {
+  return {body_scatterer(first_, electrons, here, cache_),
+          body_scatterer(second_, electrons, here, cache_)};
+}
+
+ParallelCurve::Evaluated ParallelCurve::evaluate(double gap_nm, bool with_slope,
+                                                 RoundTrips trips) const {
+  const Window here = window(gap_nm);
+  const Bodies own = bodies(Electrons::own, here);
+  Evaluated result;
+  result.gap_nm = gap_nm;
+  result.coupling = std::make_shared<const ParallelCoupling>(
+      *own.first, *own.second, touching_nm() + gap_nm, here, with_slope);
+  result.own = result.coupling->density(
+      *own.first, *own.second,
+      trips == RoundTrips::all ? FurtherTrips::included : FurtherTrips::left_out);
+  return result;
 }
 
 CurvePoint ParallelCurve::dispersion(double gap_nm, bool with_slope, RoundTrips trips) const {
   const Window here = window(gap_nm);
-  const ParallelDensity density = densities(gap_nm, here, Electrons::own, with_slope);
-  const bool all = trips == RoundTrips::all;
+  Evaluated result = evaluate(gap_nm, with_slope, trips);
   const auto sum = [&](const FrequencyDensity& part) {
     return frequency_sum(part, carbon_.nodes, here.xi, carbon_.conditions);
   };
   CurvePoint point;
-  point.energy = sum(all ? density.energy : density.first_round_trip);
-  point.first_round_trip = all ? sum(density.first_round_trip).value : point.energy.value;
-  point.positive = density.positive;
-  if (!with_slope) return point;
-  point.slope = sum(all ? density.distance_slope : density.first_slope);
-  point.first_slope = all ? sum(density.first_slope).value : point.slope.value;
+  point.energy = sum(result.own.energy);
+  point.first_round_trip = sum(result.own.first_round_trip).value;
+  point.positive = result.own.positive;
+  if (with_slope) {
+    point.slope = sum(result.own.distance_slope);
+    point.first_slope = sum(result.own.first_slope).value;
+  }
+  if (trips == RoundTrips::all) {
+    const std::lock_guard lock(last_mutex_);
+    last_ = std::move(result);
+  }
   return point;
 }
 
 Estimate ParallelCurve::electronic_share(double gap_nm) const {
+  Evaluated own;
+  {
+    const std::lock_guard lock(last_mutex_);
+    own = last_;
+  }
+  if (own.gap_nm != gap_nm) own = evaluate(gap_nm, false, RoundTrips::all);
   const Window here = window(gap_nm);
-  FrequencyDensity difference = densities(gap_nm, here, Electrons::own, false).energy;
-  const FrequencyDensity flat = densities(gap_nm, here, Electrons::flat, false).energy;
+  const Bodies flat = bodies(Electrons::flat, here);
+  const FrequencyDensity less = own.coupling->density(*flat.first, *flat.second).energy;
+  FrequencyDensity difference = own.own.energy;
   for (std::size_t k = 0; k < difference.full.size(); ++k) {
-    difference.full[k] -= flat.full[k];
-    difference.halved[k] -= flat.halved[k];
+    difference.full[k] -= less.full[k];
+    difference.halved[k] -= less.halved[k];
   }
   return frequency_sum(difference, carbon_.nodes, here.xi, carbon_.conditions);
 }

@@ -7,6 +7,9 @@
 #include <gapwright/lattice/label.hpp>
 #include <gapwright/pair/curve.hpp>
 
+#include <memory>
+#include <mutex>
+
 namespace gapwright {
 
 class ParallelCurve final : public PairCurve {
@@ -24,14 +27,26 @@ class ParallelCurve final : public PairCurve {
   SmoothEnergy contact(const PairFunction& pair, double gap_nm) const override;
 
  private:
+  struct Bodies {
+    std::shared_ptr<const Scatterer> first, second;
+  };
+  /// Own electrons at one gap, with the coupling that other electrons share.
+  struct Evaluated {
+    double gap_nm = 0.0;
+    std::shared_ptr<const ParallelCoupling> coupling;
+    ParallelDensity own;
+  };
+
   Window window(double gap_nm) const;
-  ParallelDensity densities(double gap_nm, const Window& here, Electrons electrons,
-                            bool with_slope) const;
+  Bodies bodies(Electrons electrons, const Window& here) const;
+  Evaluated evaluate(double gap_nm, bool with_slope, RoundTrips trips) const;
 
   TubeObject first_;
   TubeObject second_;
   const Carbon& carbon_;
   TubeCache& cache_;
+  mutable std::mutex last_mutex_;
+  mutable Evaluated last_;  ///< the electronic share follows the dispersion at the same gap
 };
 
 }  // namespace gapwright

@@ -1,6 +1,7 @@
 // Time, achieved error and number of operations of the coaxial line of work, on one thread.
 // Usage: bench_coaxial [PLAN]   PLAN is also ranked as a whole, on all cores.
 #include "line_nodes.hpp"
+#include "timing.hpp"
 
 #include <gapwright/contact/short_range.hpp>
 #include <gapwright/join/coaxial.hpp>
@@ -21,52 +22,15 @@
 #include <fmt/format.h>
 
 using namespace gapwright;
+using bench::print_header;
+using bench::print_row;
+using bench::timed;
+using bench::Timing;
 
 namespace {
 
 constexpr double tolerance = 1e-4;
 constexpr double fine_tolerance = 1e-7;
-
-struct Timing {
-  double best_s, median_s;
-};
-
-/// Repeats a piece of work for about half a second, at least five times.
-template <typename Work>
-Timing timed(Work work) {
-  using Clock = std::chrono::steady_clock;
-  std::vector<double> times;
-  double total = 0.0;
-  while (times.size() < 5 || (total < 0.5 && times.size() < 20000)) {
-    const auto start = Clock::now();
-    work();
-    times.push_back(std::chrono::duration<double>(Clock::now() - start).count());
-    total += times.back();
-  }
-  std::sort(times.begin(), times.end());
-  return {times.front(), times[times.size() / 2]};
-}
-
-std::string duration(double seconds) {
-  if (seconds < 1e-3) return fmt::format("{:.1f} µs", seconds * 1e6);
-  if (seconds < 1.0) return fmt::format("{:.2f} ms", seconds * 1e3);
-  return fmt::format("{:.2f} s", seconds);
-}
-
-void print_header() {
-  fmt::print("{:<42}{:>11}{:>11}{:>10}{:>10}{:>10}  {}\n", "item", "best", "median", "goal",
-             "error", "ns/op", "operations");
-}
-
-void print_row(const std::string& item, const Timing& time, const std::string& goal, double error,
-               double operations, const std::string& what) {
-  fmt::print("{:<42}{:>11}{:>11}{:>10}{:>10.1e}", item, duration(time.best_s),
-             duration(time.median_s), goal, error);
-  if (operations > 0)
-    fmt::print("{:>10.3f}  {}\n", time.best_s * 1e9 / operations, what);
-  else
-    fmt::print("{:>10}  {}\n", "", what);
-}
 
 const HoppingSet& hopping() {
   return Catalogs::built_in().hopping();
