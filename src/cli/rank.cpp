@@ -55,8 +55,7 @@ void list_failures(const SweepResult& result) {
       note(fmt::format("  and {} more, see the status field", result.failed - failures_listed));
       break;
     }
-    note(fmt::format("  {}@{}: {}, {}", row.object_1, row.object_2, status_word(row.status),
-                     row.message));
+    note(fmt::format("  {}: {}, {}", pair_name(row), status_word(row.status), row.message));
   }
 }
 
@@ -79,7 +78,7 @@ int report_early_end(const RankRequest& request, const SweepResult& result) {
 }
 
 void write_results(const RankRequest& request, const Binder& binder, const SweepResult& result) {
-  const Order order = order_of(request.plan.sort);
+  const Order order = order_of(request.plan);
   const std::vector<RankedRow> ranking = ranked(result.rows, binder, order);
   const std::size_t shown = request.plan.top > 0
                                 ? std::min(ranking.size(), std::size_t(request.plan.top))
@@ -95,8 +94,8 @@ void write_results(const RankRequest& request, const Binder& binder, const Sweep
     for (const RankedRow& row : top) lines += ranked_json(row).dump() + "\n";
     print(lines);
   } else {
-    print(ranking_table(top, order));
-    note(how_to_read(shown, ranking.size(), order));
+    print(ranking_table(top, request.plan.arrangement, order));
+    note(how_to_read(shown, ranking.size(), request.plan.arrangement, order));
   }
   if (!request.csv) return;  // last: a file that cannot be written takes no result with it
   write_file(*request.csv, ranked_csv(ranking, making_of(request, binder, order)));

@@ -21,6 +21,12 @@ namespace {
 constexpr double seconds_to_start = 0.3;        // calibration of the contact targets
 constexpr double seconds_per_tube_nm2 = 0.004;  // response: by the diameter squared
 constexpr double seconds_per_pair = 0.0002;
+// Side by side: responses on wider windows, own and flat; energies by the diameters, a row at one
+// gap two of them, at its well seven.
+constexpr double seconds_per_tube_beside_nm2 = 0.012;
+constexpr double seconds_per_energy = 0.0004;
+constexpr double seconds_per_energy_nm2 = 0.0006;
+constexpr double energies_at_gap = 2, energies_of_well = 7;
 constexpr double bytes_per_row = 370;
 constexpr double bytes_per_store = 30e3;
 
@@ -32,19 +38,25 @@ struct Estimates {
 };
 
 Estimates estimate(const RankRequest& request, const PlanRows& rows) {
+  const bool beside = request.plan.arrangement == Arrangement::parallel;
+  const double each_tube = beside ? seconds_per_tube_beside_nm2 : seconds_per_tube_nm2;
+  const double energies = request.plan.fixed_gap_nm ? energies_at_gap : energies_of_well;
   std::set<Chirality> tubes;
   Estimates sum;
   const auto add = [&](const Tube& tube) {
     if (tubes.insert(tube.chirality).second)
-      sum.seconds += seconds_per_tube_nm2 * tube.diameter_nm() * tube.diameter_nm();
+      sum.seconds += each_tube * tube.diameter_nm() * tube.diameter_nm();
   };
   const auto step = static_cast<std::size_t>(request.parts);
   for (std::size_t k = static_cast<std::size_t>(request.part - 1); k < rows.size(); k += step) {
     add(rows.inner(k));
     add(rows.outer(k));
     ++sum.pairs;
+    sum.seconds += beside ? energies * (seconds_per_energy + seconds_per_energy_nm2 *
+                                                                 rows.inner(k).diameter_nm() *
+                                                                 rows.outer(k).diameter_nm())
+                          : seconds_per_pair;
   }
-  sum.seconds += seconds_per_pair * static_cast<double>(sum.pairs);
   // Nodes grow along both axes.
   const Nodes wanted = make_nodes(request.plan.settings.tolerance), usual = make_nodes(1e-4);
   sum.seconds *= usual.q.step * usual.xi.step / (wanted.q.step * wanted.xi.step);

@@ -9,6 +9,7 @@
 #include <gapwright/sweep/store.hpp>
 
 #include <cmath>
+#include <sstream>
 
 #include <fmt/format.h>
 
@@ -62,7 +63,7 @@ std::string comparison_json(const Binding& stored, const std::vector<Difference>
 }
 
 std::string comparison_text(const Binding& stored, const std::vector<Difference>& found) {
-  const std::string name = stored.object_1 + "@" + stored.object_2;
+  const std::string name = pair_name(stored);
   if (found.empty())
     return fmt::format("{}: stored and computed rows are the same in all {} fields\n", name,
                        binding_fields().size());
@@ -73,20 +74,50 @@ std::string comparison_text(const Binding& stored, const std::vector<Difference>
   return name + ": stored and computed rows differ\n" + table.text();
 }
 
-TubeObject parse_pair(const std::string& label) {
+InputError no_pair(const std::string& label) {
+  return InputError({"'" + label + "' is no pair",
+                     "--pair",
+                     {},
+                     "inner@outer such as 5,5@10,10, or two tubes such as \"6,5 10,10\"",
+                     {}});
+}
+
+Placement parse_coaxial(const std::string& label) {
   const ParsedLabel parsed = parse_label(label);
   for (const std::string& remark : parsed.notes) note("note: " + remark);
   const TubeObject* walls = std::get_if<TubeObject>(&parsed.object);
-  if (!walls || walls->walls.size() != 2)
-    throw InputError(
-        {"'" + label + "' is no pair", "--pair", {}, "inner@outer, such as 5,5@10,10", {}});
-  return *walls;
+  if (!walls || walls->walls.size() != 2) throw no_pair(label);
+  return {Arrangement::coaxial, *walls};
+}
+
+Placement parse_parallel(const std::string& labels, const Plan& plan) {
+  std::vector<std::string> parts;
+  std::istringstream words(labels);
+  for (std::string part; words >> part;) parts.push_back(part);
+  if (parts.size() != 2) throw no_pair(labels);
+  std::vector<std::string> remarks;
+  const Tube first = parse_single_tube(parts[0], "--pair", remarks);
+  const Tube second = parse_single_tube(parts[1], "--pair", remarks);
+  for (const std::string& remark : remarks) note("note: " + remark);
+  return side_by_side(first, second, plan.fixed_gap_nm);
+}
+
+Placement parse_pair(const RankRequest& request) {
+  return request.plan.arrangement == Arrangement::parallel
+             ? parse_parallel(request.pair, request.plan)
+             : parse_coaxial(request.pair);
+}
+
+std::string name_of(const Placement& placement) {
+  if (!placement.second) return label_of(placement.first);
+  return label_of(placement.first) + " " + label_of(*placement.second) +
+         (placement.gap_nm ? fmt::format(" at {} nm", *placement.gap_nm) : " at its well");
 }
 
 }  // namespace
 
 int compare_pair(const Words& words, const RankRequest& request, const Catalogs& catalogs) {
-  const TubeObject walls = parse_pair(request.pair);
+  const Placement placement = parse_pair(request);
   if (!request.store)
     throw InputError({"compares with a stored row", "--pair", {}, "--store FILE.db beside it", {}});
   const Store store = Store::open_read_only(*request.store);
@@ -94,10 +125,9 @@ int compare_pair(const Words& words, const RankRequest& request, const Catalogs&
   const bool own = !words.operands.empty() || has_settings(words);
   const Binder binder(catalogs, own ? request.plan.settings : store.origin().settings);
   store.require_same_origin(binder);
-  const Placement placement{request.plan.arrangement, walls};
   const auto stored = store.read({row_key(placement, binder.settings_key())});
   if (stored.empty())
-    throw InputError({"no row of " + label_of(walls),
+    throw InputError({"no row of " + name_of(placement),
                       request.store->string(),
                       {},
                       "a pair that a finished run of this store held",

@@ -25,14 +25,51 @@ void apply_interval(const Words& words, const std::string& option, const NumberR
 
 /// True when something bounds the tubes: else every pair of all tubes is meant, and hardly by will.
 bool selects(const Plan& plan) {
+  if (plan.arrangement == Arrangement::parallel)
+    return plan.with || plan.tubes.diameter_nm || plan.tubes.index;
   return plan.inner || plan.outer || plan.inner_diameter_nm || plan.outer_diameter_nm ||
          plan.tubes.diameter_nm || plan.tubes.index;
+}
+
+void apply_gap(const Words& words, Plan& plan) {
+  const auto typed = words.text("--gap-nm");
+  if (!typed) return;
+  if (plan.arrangement == Arrangement::coaxial) {
+    apply_interval(words, "--gap-nm", {min_gap_nm, max_gap_nm, "nm"}, plan.gap_nm);
+  } else if (typed->find(':') == std::string::npos) {
+    plan.fixed_gap_nm = words.number("--gap-nm", {min_gap_nm, farthest_gap_nm, "nm"});
+  } else {
+    throw InputError({"'" + *typed + "' is a range, and parallel pairs stand at one gap",
+                      "--gap-nm",
+                      {},
+                      "one gap in nm, or none for the bottom of each well",
+                      {}});
+  }
+}
+
+/// Two labels with a blank between them mean tubes side by side.
+bool names_parallel_pair(const std::string& pair) {
+  return pair.find(' ') != std::string::npos && pair.find('@') == std::string::npos;
+}
+
+/// Names the option or the plan that holds a key without meaning.
+void require_in_place(const Words& words, const Plan& plan) {
+  const auto misplaced = misplaced_key(plan);
+  if (!misplaced) return;
+  std::string option = "--" + misplaced->key;
+  std::replace(option.begin(), option.end(), '_', '-');
+  const std::string where = words.has(option) || words.operands.empty()
+                                ? option
+                                : words.operands.front() + ", key " + misplaced->key;
+  throw InputError({misplaced->what, where, {}, misplaced->expected, {}});
 }
 
 void apply_flags(const Words& words, Plan& plan) {
   const NumberRange diameters{min_diameter_nm, max_diameter_nm, "nm"};
   if (const auto word = words.text("--arrangement"))
     plan.arrangement = at_option("--arrangement", [&] { return sweep_arrangement(*word); });
+  else if (names_parallel_pair(words.text("--pair").value_or("")))
+    plan.arrangement = Arrangement::parallel;
   apply_interval(words, "--diameter-nm", diameters, plan.tubes.diameter_nm);
   if (const auto bounds = words.interval("--index", {1, max_index, ""}))
     plan.tubes.index =
@@ -45,8 +82,9 @@ void apply_flags(const Words& words, Plan& plan) {
     plan.inner = parse_single_tube(*label, "--inner", plan.notes);
   if (const auto label = words.text("--outer"))
     plan.outer = parse_single_tube(*label, "--outer", plan.notes);
-  if (const auto window = words.interval("--gap-nm", {min_gap_nm, max_gap_nm, "nm"}))
-    plan.gap_nm = {(*window)[0], (*window)[1]};
+  if (const auto label = words.text("--with"))
+    plan.with = parse_single_tube(*label, "--with", plan.notes);
+  apply_gap(words, plan);
   if (const auto field = words.text("--sort"))
     plan.sort = at_option("--sort", [&] { return order_of(*field).field; });
   plan.top = words.integer("--top", 1, std::numeric_limits<int>::max()).value_or(plan.top);
@@ -82,6 +120,7 @@ RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
   RankRequest request;
   request.plan = read_base_plan(words, catalogs);
   apply_flags(words, request.plan);
+  require_in_place(words, request.plan);
   request.plan.settings = read_settings(words, catalogs, request.plan.settings);
   if (const auto file = words.text("--csv")) request.csv = *file;
   if (const auto file = words.text("--store")) request.store = *file;
@@ -91,13 +130,17 @@ RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
   request.threads = thread_count(words);
   request.json = words.flag("--json");
   request.count = words.flag("--count");
-  if (!selects(request.plan) && request.pair.empty())
+  if (!selects(request.plan) && request.pair.empty()) {
+    const std::vector<std::string> options =
+        request.plan.arrangement == Arrangement::parallel
+            ? std::vector<std::string>{"--diameter-nm", "--index", "--with"}
+            : std::vector<std::string>(selecting.begin(), selecting.end());
     throw InputError({"nothing says which tubes to take",
                       "rank",
                       {},
-                      "a plan file, or one of " +
-                          joined(std::vector<std::string>(selecting.begin(), selecting.end())),
+                      "a plan file, or one of " + joined(options),
                       {}});
+  }
   return request;
 }
 

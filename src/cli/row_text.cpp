@@ -1,5 +1,7 @@
 #include "row_text.hpp"
 
+#include <gapwright/pair/placement.hpp>
+
 #include <fmt/format.h>
 
 namespace gapwright::cli {
@@ -43,6 +45,11 @@ std::string comment_lines(const std::string& comment) {
 }
 
 }  // namespace
+
+std::string pair_name(const Binding& row) {
+  const bool coaxial = row.arrangement == arrangement_word(Arrangement::coaxial);
+  return row.object_1 + (coaxial ? "@" : " ") + row.object_2;
+}
 
 Json row_json(const Binding& row) {
   Json object;

@@ -13,6 +13,9 @@ namespace gapwright::cli {
 
 using Json = nlohmann::ordered_json;
 
+/// "(5,5)@(10,10)" of walls in walls, "(5,5) (10,10)" of tubes beside each other.
+std::string pair_name(const Binding& row);
+
 /// All fields, null where empty; walls in walls add `interfaces`, a failure adds `message`.
 Json row_json(const Binding& row);
 /// rank, all fields, rank_spread.

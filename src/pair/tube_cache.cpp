@@ -2,15 +2,23 @@
 
 #include <gapwright/join/coaxial.hpp>
 
+#include <utility>
+
 namespace gapwright {
 namespace {
 
 constexpr std::size_t scatterer_bytes = std::size_t(300) << 20;
+// Walls of one diameter after the other, as sweeps visit them, fit into this at 20 nm, too.
+constexpr std::size_t response_bytes = std::size_t(600) << 20;
 
 // Waves of the cells of any tube: q down to that of a 20 nm wide tube; at the largest round-trip
 // exponent x of a gap of 0.2 nm or more, Q stays below about 4x.
 constexpr double widest_radius_nm = 10.0;
 constexpr double flat_highest_per_exponent = 4.0;
+
+std::size_t bytes_of(const ShellResponse& response) {
+  return response.window().cells() * std::size_t(response.window().xi.count) * sizeof(double);
+}
 
 }  // namespace
 
@@ -36,13 +44,45 @@ void TubeCache::warm(const Tube& tube) {
 std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const Window& window) {
   Entry& e = entry(tube, window.xi.first);
   const std::lock_guard lock(e.mutex);
-  if (e.response && e.response->window().covers(window)) return e.response;
+  if (e.response && e.response->window().covers(window)) {
+    note_use(e);
+    return e.response;
+  }
   if (window.q.count > 0)
     e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
   if (e.announced.q.count == 0) return nullptr;
   e.response = std::make_shared<const ShellResponse>(tube_response(
       tube, carbon_.hopping, carbon_.conditions, nodes_on(window.xi, carbon_.nodes), e.announced));
+  note_use(e);
+  drop_oldest(e);
   return e.response;
+}
+
+void TubeCache::note_use(Entry& e) {
+  const std::lock_guard lock(used_mutex_);
+  response_bytes_ -= e.bytes;
+  e.bytes = bytes_of(*e.response);
+  response_bytes_ += e.bytes;
+  if (e.place)
+    used_.splice(used_.begin(), used_, *e.place);
+  else
+    used_.push_front(&e);
+  e.place = used_.begin();
+}
+
+void TubeCache::drop_oldest(const Entry& keep) {
+  const std::lock_guard lock(used_mutex_);
+  for (auto place = used_.end(); response_bytes_ > response_bytes && place != used_.begin();) {
+    Entry& oldest = **--place;
+    if (&oldest == &keep) continue;
+    // One that another thread is at is in use.
+    const std::unique_lock free(oldest.mutex, std::try_to_lock);
+    if (!free) continue;
+    oldest.response.reset();
+    response_bytes_ -= std::exchange(oldest.bytes, 0);
+    oldest.place.reset();
+    place = used_.erase(place);
+  }
 }
 
 TubeGaps TubeCache::gaps(const Tube& tube) {

@@ -10,6 +10,7 @@
 #include <map>
 #include <memory>
 #include <mutex>
+#include <optional>
 #include <tuple>
 
 namespace gapwright {
@@ -25,8 +26,9 @@ struct Carbon {
 /// Whose π electrons a shell has.
 enum class Electrons { own, flat };
 
-/// Computes each tube's response once, on the largest window asked for so far, and keeps scatterers
-/// in a least-recently-used store of bounded size. Safe to call from several threads.
+/// Computes each tube's response on the largest window asked for so far; responses and scatterers
+/// are kept in stores of bounded size, the least recently used one leaves first. Safe to call from
+/// several threads.
 class TubeCache {
  public:
   explicit TubeCache(const Carbon& carbon) : carbon_(carbon) {}
@@ -52,6 +54,8 @@ class TubeCache {
     std::mutex mutex;
     Window announced;
     std::shared_ptr<const ShellResponse> response;
+    std::size_t bytes = 0;                             // of the response; guarded by used_mutex_,
+    std::optional<std::list<Entry*>::iterator> place;  // as is its place among used_
   };
   // Rows of one frequency range share responses; the range's first index stands for it.
   using EntryKey = std::pair<Chirality, int>;
@@ -63,6 +67,8 @@ class TubeCache {
 
   Entry& entry(const Tube& tube, int xi_first);
   std::shared_ptr<const ShellResponse> response(const Tube& tube, const Window& window);
+  void note_use(Entry& e);
+  void drop_oldest(const Entry& keep);
   std::shared_ptr<const Scatterer> kept(const Key& key, const Window& window);
   void keep(const Key& key, std::shared_ptr<const Scatterer> scatterer);
 
@@ -70,6 +76,9 @@ class TubeCache {
   std::mutex entries_mutex_;
   std::map<EntryKey, std::unique_ptr<Entry>> entries_;
   std::map<Chirality, TubeGaps> gaps_;
+  std::mutex used_mutex_;
+  std::list<Entry*> used_;  // entries with a response, most recent first
+  std::size_t response_bytes_ = 0;
   std::mutex kept_mutex_;
   std::list<Kept> kept_;  // most recent first
   std::map<Key, std::list<Kept>::iterator> kept_index_;

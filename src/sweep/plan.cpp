@@ -13,6 +13,7 @@ namespace {
 const NumberRange diameter_range{min_diameter_nm, max_diameter_nm, "nm"};
 const NumberRange index_range{1, max_index, ""};
 const NumberRange gap_range{min_gap_nm, max_gap_nm, "nm"};
+const NumberRange fixed_gap_range{min_gap_nm, farthest_gap_nm, "nm"};
 
 // Runs a check that knows nothing of the file, and gives its message the place of the key.
 template <typename Check>
@@ -58,7 +59,14 @@ void read_tubes(const TomlReader& reader, Plan& plan) {
   plan.outer_diameter_nm = interval(reader, "outer_diameter_nm", diameter_range);
   read_tube(reader, "inner", plan, plan.inner);
   read_tube(reader, "outer", plan, plan.outer);
-  if (const auto window = interval(reader, "gap_nm", gap_range)) plan.gap_nm = *window;
+  read_tube(reader, "with", plan, plan.with);
+  if (plan.arrangement == Arrangement::parallel)
+    plan.fixed_gap_nm = reader.optional_number("gap_nm", fixed_gap_range);
+  else
+    plan.gap_nm = interval(reader, "gap_nm", gap_range);
+  const auto misplaced = misplaced_key(plan);
+  if (misplaced && reader.has("arrangement"))  // else a flag may settle it
+    throw reader.error(misplaced->key, misplaced->what, misplaced->expected);
 }
 
 void read_settings(const TomlReader& reader, const Catalogs& catalogs, Settings& settings) {
@@ -99,12 +107,40 @@ std::string quoted(const std::string& text) {
 }  // namespace
 
 Arrangement sweep_arrangement(std::string_view word) {
-  if (word == arrangement_word(Arrangement::coaxial)) return Arrangement::coaxial;
+  std::vector<std::string> words;
+  for (const Arrangement arrangement : {Arrangement::coaxial, Arrangement::parallel}) {
+    words.push_back(arrangement_word(arrangement));
+    if (word == words.back()) return arrangement;
+  }
   throw InputError({.what = "arrangement '" + std::string(word) + "' is not swept by this version",
                     .where = "arrangement",
                     .excerpt = {},
-                    .expected = "coaxial",
-                    .nearest = nearest_word(word, {"coaxial"})});
+                    .expected = "one of " + joined(words),
+                    .nearest = nearest_word(word, words)});
+}
+
+std::optional<Misplaced> misplaced_key(const Plan& plan) {
+  const bool coaxial = plan.arrangement == Arrangement::coaxial;
+  const auto key = [&](const char* name, const std::string& expected) {
+    return Misplaced{
+        name,
+        std::string(name) + " says nothing of " + arrangement_word(plan.arrangement) + " pairs",
+        expected};
+  };
+  const std::string walls = "arrangement coaxial, or with TUBE for all pairs that hold one tube";
+  const std::string ranges = "arrangement coaxial, or diameter_nm for both tubes";
+  if (!coaxial && plan.inner) return key("inner", walls);
+  if (!coaxial && plan.outer) return key("outer", walls);
+  if (!coaxial && plan.inner_diameter_nm) return key("inner_diameter_nm", ranges);
+  if (!coaxial && plan.outer_diameter_nm) return key("outer_diameter_nm", ranges);
+  if (!coaxial && plan.gap_nm)
+    return Misplaced{"gap_nm", "gap_nm is a range, and parallel pairs stand at one gap",
+                     "one gap in nm, or none for the bottom of each well"};
+  if (coaxial && plan.with) return key("with", "arrangement parallel, or inner or outer");
+  if (coaxial && plan.fixed_gap_nm)
+    return Misplaced{"gap_nm", "gap_nm is one gap, and walls in walls have gaps of their own",
+                     "LOW:HIGH in nm"};
+  return std::nullopt;
 }
 
 Interval index_interval(double low, double high) {
@@ -149,7 +185,7 @@ std::string plan_text(const Plan& plan) {
   const auto word = [&](const char* key, const std::string& value) {
     if (!value.empty()) text += fmt::format("{} = {}\n", key, quoted(value));
   };
-  const auto range = [&](const char* key, const std::optional<Interval>& value) {
+  const auto range = [&](const char* key, std::optional<Interval> value) {
     if (value) text += fmt::format("{} = [{}, {}]\n", key, value->low, value->high);
   };
   word("title", plan.title);
@@ -161,7 +197,11 @@ std::string plan_text(const Plan& plan) {
   if (plan.outer) word("outer", plan.outer->label());
   range("inner_diameter_nm", plan.inner_diameter_nm);
   range("outer_diameter_nm", plan.outer_diameter_nm);
-  range("gap_nm", plan.gap_nm);
+  if (plan.with) word("with", plan.with->label());
+  if (plan.arrangement == Arrangement::coaxial)
+    range("gap_nm", plan.gap_nm.value_or(usual_gaps_nm));
+  else if (plan.fixed_gap_nm)
+    text += fmt::format("gap_nm = {}\n", *plan.fixed_gap_nm);
   const Settings& settings = plan.settings;
   text += fmt::format("temperature_K = {}\nchemical_potential_eV = {}\n",
                       settings.conditions.temperature_K, settings.conditions.chemical_potential_eV);

@@ -1,10 +1,10 @@
-#include <gapwright/catalog/constants.hpp>
-#include <gapwright/contact/short_range.hpp>
 #include <gapwright/sweep/ranking.hpp>
 
 #include <algorithm>
 #include <numeric>
 #include <tuple>
+
+#include <tbb/parallel_for.h>
 
 namespace gapwright {
 namespace {
@@ -31,46 +31,19 @@ std::vector<std::size_t> sorted_places(const std::vector<SortKey>& keys, bool de
   return order;
 }
 
-Placement placement_of(const Binding& row) {
-  const Arrangement arrangement = parse_arrangement(row.arrangement);
-  if (arrangement == Arrangement::coaxial)
-    return {arrangement, parse_label(row.object_1 + "@" + row.object_2).object};
-  return {arrangement, parse_label(row.object_1).object, parse_label(row.object_2).object,
-          row.gap_nm};
-}
-
 }  // namespace
 
 Order order_of(const std::string& field) {
-  Order order{field.empty() ? "energy_mJ_per_m2" : field};
-  order.field = binding_field(order.field).name;
-  order.descending = order.field == "pull_out_force_nN";
+  Order order{.field = std::string(binding_field(field).name)};
+  for (const char* strong : {"pull_out_force_nN", "well_depth_eV_per_nm", "stiffness_eV_per_nm3"})
+    order.descending = order.descending || order.field == strong;
   return order;
 }
 
-Binding under_target(const Binding& row, const Binder& binder, const std::string& contact_target) {
-  Binding changed = row;
-  changed.contact_target = contact_target;
-  if (!row.energy_eV_per_nm || !row.dispersion_eV_per_nm) return changed;
-  const double contact = binder.contact_eV_per_nm(placement_of(row), contact_target);
-  const double energy = *row.dispersion_eV_per_nm + contact;
-  const double inner_radius_nm = row.diameter_1_nm.value() / 2;
-  const double outer_radius_nm = row.diameter_2_nm.value() / 2;
-  const double mid_circumference_nm = constants::pi * (inner_radius_nm + outer_radius_nm);
-  const double per_area = energy / mid_circumference_nm;  // eV/nm²
-  changed.contact_eV_per_nm = contact;
-  changed.energy_eV_per_nm = energy;
-  changed.energy_mJ_per_m2 = per_area * constants::mJ_per_m2_per_eV_per_nm2;
-  changed.energy_meV_per_atom = per_area * constants::atom_area_nm2 * 1e3;
-  if (row.cut_energy_eV_per_nm) changed.cut_energy_eV_per_nm = energy;
-  if (row.pull_out_force_nN) changed.pull_out_force_nN = -energy * constants::nN_per_eV_per_nm;
-  if (row.pressure_GPa && row.pressure_dispersion_GPa) {
-    const double slope =
-        coaxial_energy(binder.contact_term(contact_target), inner_radius_nm, outer_radius_nm).slope;
-    changed.pressure_GPa =
-        *row.pressure_dispersion_GPa - slope / mid_circumference_nm * constants::GPa_per_eV_per_nm3;
-  }
-  return changed;
+Order order_of(const Plan& plan) {
+  if (!plan.sort.empty()) return order_of(plan.sort);
+  if (plan.arrangement == Arrangement::coaxial) return order_of("energy_mJ_per_m2");
+  return order_of(plan.fixed_gap_nm ? "energy_eV_per_nm" : "well_depth_eV_per_nm");
 }
 
 std::vector<RankedRow> ranked(const std::vector<Binding>& rows, const Binder& binder,
@@ -88,8 +61,10 @@ std::vector<RankedRow> ranked(const std::vector<Binding>& rows, const Binder& bi
   for (const ContactTarget& target : binder.catalogs().contact_targets()) {
     if (target.name == binder.settings().contact_target) continue;
     std::vector<SortKey> other(rows.size());
-    for (std::size_t i = 0; i < rows.size(); ++i)
+    binder.contact_term(target.name);  // else every task waits for the first
+    tbb::parallel_for(std::size_t{0}, rows.size(), [&](std::size_t i) {
       other[i] = {field.get(under_target(rows[i], binder, target.name)), &rows[i]};
+    });
     const std::vector<std::size_t> moved = sorted_places(other, order.descending);
     for (std::size_t place = 0; place < moved.size(); ++place) {
       highest[moved[place]] = std::max(highest[moved[place]], static_cast<int>(place));

@@ -15,9 +15,12 @@ import unittest
 
 PROGRAM = None
 EXAMPLE = pathlib.Path(__file__).resolve().parents[2] / "examples" / "double-wall.toml"
+BESIDE_EXAMPLE = EXAMPLE.with_name("side-by-side.toml")
 
 # A sweep of a few seconds on one thread, in several batches.
 SWEEP = ["--inner-diameter-nm", "0.7:1.1", "--gap-nm", "0.33:0.38"]
+# Tubes side by side, as long.
+BESIDE = ["--arrangement", "parallel", "--diameter-nm", "0.7:0.85"]
 # A sweep whose every row takes long.
 SLOW = ["--inner", "20,20", "--tolerance", "1e-7", "--threads", "1"]
 NOBODY = 65534

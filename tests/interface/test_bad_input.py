@@ -132,9 +132,56 @@ class Ranges(harness.Case):
         inner = ["rank", "--inner", "10,10"]
         self.refused([*inner, "--kind", "metalic"], "--kind", "nearest: metallic")
         self.refused([*inner, "--sort", "pull_out_force"], "--sort", "nearest: pull_out_force_nN")
-        self.refused([*inner, "--arrangement", "parallel"], "--arrangement", "coaxial")
+        self.refused([*inner, "--arrangement", "paralel"], "--arrangement", "nearest: parallel")
         self.refused(["rank", "--inner", "5,5@10,10"], "--inner", "not one tube")
         self.refused(["rank", "--outer", "graphene"], "--outer", "not one tube")
+
+
+class SideBySide(harness.Case):
+    PARALLEL = ["rank", "--arrangement", "parallel"]
+
+    def test_options_of_walls(self):
+        for option, value in (("--inner", "5,5"), ("--outer", "10,10"),
+                              ("--inner-diameter-nm", "0.7:1"), ("--outer-diameter-nm", "0.7:1")):
+            self.refused([*self.PARALLEL, "--diameter-nm", "0.6:0.7", option, value], option,
+                         "says nothing of parallel pairs", "arrangement coaxial")
+        self.refused(["rank", "--with", "10,10", "--diameter-nm", "0.6:0.7"], "--with",
+                     "says nothing of coaxial pairs", "arrangement parallel")
+
+    def test_gap(self):
+        tubes = [*self.PARALLEL, "--diameter-nm", "0.6:0.7"]
+        self.refused([*tubes, "--gap-nm", "0.3:0.4"], "--gap-nm", "one gap")
+        for value in ("0.1", "nan", "1e9", "x", ""):
+            self.refused([*tubes, "--gap-nm", value], "--gap-nm")
+        self.refused(["rank", "--inner", "5,5", "--gap-nm", "0.34"], "--gap-nm", "LOW:HIGH")
+
+    def test_tubes(self):
+        self.refused(self.PARALLEL, "nothing says which tubes", "--with")
+        self.refused([*self.PARALLEL, "--diameter-nm", "0.60:0.601"], "no tube can be in a pair",
+                     "diameter_nm 0.6:0.601")
+        self.refused([*self.PARALLEL, "--with", "5,5@10,10"], "--with", "not one tube")
+        self.refused([*self.PARALLEL, "--with", "graphene"], "--with", "not one tube")
+
+    def test_plan(self):
+        for text, fragments in (
+                ('inner = "5,5"', ["plan.toml:2", "inner says nothing of parallel", "^"]),
+                ("gap_nm = [0.3, 0.4]", ["plan.toml:2", "gap_nm", "^"]),
+                ("inner_diameter_nm = [0.7, 1]", ["plan.toml:2", "diameter_nm for both tubes"])):
+            file = self.path("plan.toml", 'arrangement = "parallel"\n' + text + "\n")
+            self.refused(["rank", file], str(file), *fragments)
+        walls = self.path("walls.toml", 'inner = "5,5"\n')
+        self.refused(["rank", walls, "--arrangement", "parallel"], str(walls), "key inner")
+
+    def test_pair(self):
+        store = self.path("rows.db")
+        self.good("rank", "--arrangement", "parallel", "--with", "5,5", "--index", "5:5", "--store",
+                  store)
+        pair = ["rank", "--store", store, "--pair"]
+        self.refused([*pair, "5,5 8,8"], "no row of (5,5) (8,8) at its well")
+        self.refused([*pair, "5,5 5,0", "--gap-nm", "1"], "no row of (5,0) (5,5) at 1 nm")
+        self.refused([*pair, "5,5 "], "is no pair")
+        self.refused([*pair, "5,5 5,0 4,4"], "is no pair")
+        self.refused([*pair, "5,5 x"], "x")
 
 
 class Plans(harness.Case):
@@ -158,7 +205,7 @@ class Plans(harness.Case):
         self.plan('inner = "10,10"\ntolerance = nan\n', "plan.toml:2")
         self.plan('inner = "10,10"\nsort = "energy_mJ_per_m"\n', "nearest: energy_mJ_per_m2")
         self.plan('inner = "10,10"\nhopping = "mine"\n', "plan.toml:2", "nearest-neighbour")
-        self.plan('inner = "10,10"\narrangement = "parallel"\n', "plan.toml:2", "coaxial")
+        self.plan('inner = "10,10"\narrangement = "crossed"\n', "plan.toml:2", "coaxial")
         self.plan('inner = "10,10"\ntop = 0\n', "plan.toml:2")
         self.plan("index = [3.5, 8]\n", "plan.toml:1", "whole")
 

@@ -9,7 +9,7 @@ import sqlite3
 import subprocess
 
 import harness
-from harness import EXAMPLE, SWEEP
+from harness import BESIDE, EXAMPLE, SWEEP
 
 FIELDS = """object_1 object_2 kind_1 kind_2 diameter_1_nm diameter_2_nm chiral_angle_1_deg
     chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm temperature_K
@@ -260,6 +260,78 @@ class Rank(harness.Case):
         self.assertEqual(len(lines), 22)
 
 
+class SideBySide(harness.Case):
+    def test_wells_rank_by_depth(self):
+        csv_file = self.path("rows.csv")
+        done = self.good("rank", *BESIDE, "--csv", csv_file, "--top", "3")
+        rows = read_csv(csv_file.read_text())
+        depths = [float(row["well_depth_eV_per_nm"]) for row in rows]
+        self.assertEqual(depths, sorted(depths, reverse=True))
+        names = {(row["object_1"], row["object_2"]) for row in rows}
+        self.assertEqual(len(names), len(rows))
+        self.assertTrue(any(one == other for one, other in names))
+        for row in rows:
+            self.assertEqual(row["arrangement"], "parallel")
+            self.assertEqual(row["status"], "ok")
+            self.assertEqual(row["gap_nm"], row["equilibrium_gap_nm"])
+            self.assertEqual(row["energy_mJ_per_m2"], "")
+        for word in ("well", "stiffness", "pair pot.", "spread"):
+            self.assertIn(word, done.stdout)
+        self.assertIn(f"3 of {len(rows)} rows by well_depth_eV_per_nm, highest first", done.stderr)
+        bound = json.loads(self.good("bind", rows[0]["object_1"], rows[0]["object_2"],
+                                     "--json").stdout)
+        self.assertEqual(float(rows[0]["well_depth_eV_per_nm"]), bound["well_depth_eV_per_nm"])
+
+    def test_one_gap(self):
+        lines = self.good("rank", "--arrangement", "parallel", "--with", "10,10", "--index", "5:6",
+                          "--gap-nm", "0.5", "--json").stdout.splitlines()
+        rows = [json.loads(line) for line in lines]
+        energies = [row["energy_eV_per_nm"] for row in rows]
+        self.assertEqual(energies, sorted(energies))
+        for row in rows:
+            self.assertEqual(row["gap_nm"], 0.5)
+            self.assertEqual(row["object_2"], "(10,10)")
+            self.assertIsNone(row["well_depth_eV_per_nm"])
+
+    def test_rank_spread_of_wells_is_that_of_runs_under_each_target(self):
+        places = {}
+        for target in ("bilayer-qmc", "graphite-rpa", "cleavage-measured"):
+            done = self.good("rank", *BESIDE, "--contact-target", target, "--json")
+            for row in map(json.loads, done.stdout.splitlines()):
+                places.setdefault((row["object_1"], row["object_2"]), []).append(
+                    (row["rank"], row["rank_spread"]))
+        for found in places.values():
+            ranks = [rank for rank, _ in found]
+            for _, spread in found:  # neighbours may differ by less than the estimate's 1e-5
+                self.assertLessEqual(abs(spread - (max(ranks) - min(ranks))), 1)
+
+    def test_store_and_pair(self):
+        store = self.path("rows.db")
+        tubes = ["--arrangement", "parallel", "--index", "5:5"]
+        self.good("rank", *tubes, "--store", store)
+        for pair in ("5,5 5,2", "5,2 5,5"):
+            self.assertIn("(5,2) (5,5): stored and computed rows are the same",
+                          self.good("rank", "--pair", pair, "--store", store).stdout)
+        self.good("rank", *tubes, "--gap-nm", "1", "--store", store)
+        self.good("rank", "--pair", "5,5 5,2", "--gap-nm", "1", "--store", store)
+        with contextlib.closing(sqlite3.connect(store)) as database, database:
+            database.execute("UPDATE pairs SET contact_eV_per_nm = contact_eV_per_nm * 1.5")
+        done = harness.run("rank", "--pair", "5,5 5,2", "--store", store)
+        self.assertEqual(done.returncode, 1)
+        self.assertIn("contact_eV_per_nm", done.stdout)
+
+    def test_count(self):
+        done = json.loads(self.good("rank", harness.BESIDE_EXAMPLE, "--count", "--json").stdout)
+        self.assertEqual(done["pairs"], done["tubes"] * (done["tubes"] + 1) // 2)
+        at_gap = json.loads(self.good("rank", harness.BESIDE_EXAMPLE, "--gap-nm", "0.4", "--count",
+                                      "--json").stdout)
+        self.assertLess(at_gap["estimated_time_s"], done["estimated_time_s"])
+
+    def test_example(self):
+        done = self.good("rank", harness.BESIDE_EXAMPLE, "--kind", "zigzag")
+        self.assertIn("(12,0) (12,0)", done.stdout)
+
+
 class Pair(harness.Case):
     def test_same_and_changed(self):
         store = self.path("rows.db")
@@ -292,6 +364,26 @@ class Failures(harness.Case):
         self.assertIn("1 of", done.stderr)
         self.assertIn("(10,10)@(15,15): not_converged, made to fail", done.stderr)
         self.assertIn("not_converged", done.stdout)
+
+
+    def test_no_minimum_side_by_side(self):
+        tubes = ["--arrangement", "parallel", "--index", "5:5"]
+        store = self.path("rows.db")
+        self.good("rank", *tubes, "--store", store)
+        with contextlib.closing(sqlite3.connect(store)) as database, database:
+            key = database.execute("SELECT key FROM pairs WHERE object_1 = '(5,2)' AND"
+                                   " object_2 = '(5,5)'").fetchone()[0]
+            emptied = ", ".join(f"{field} = NULL" for field in (
+                "gap_nm", "axis_distance_nm", "dispersion_eV_per_nm", "contact_eV_per_nm",
+                "energy_eV_per_nm", "equilibrium_gap_nm", "well_depth_eV_per_nm"))
+            database.execute(f"UPDATE pairs SET status = 'no_minimum', {emptied} WHERE key = ?",
+                             (key,))
+            database.execute("INSERT INTO failures VALUES(?, '(5,2)', '(5,5)', 'no_minimum',"
+                             " 'made to fail')", (key,))
+        done = harness.run("rank", *tubes, "--store", store)
+        self.assertEqual(done.returncode, 3)
+        self.assertIn("(5,2) (5,5): no_minimum, made to fail", done.stderr)
+        self.assertIn("no_minimum", done.stdout.splitlines()[-1])
 
 
 class Check(harness.Case):

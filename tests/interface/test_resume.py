@@ -5,7 +5,7 @@ import signal
 import time
 
 import harness
-from harness import SLOW, SWEEP
+from harness import BESIDE, SLOW, SWEEP
 
 KILLS = 6
 FIXED_SEED = 20
@@ -22,6 +22,19 @@ class Killed(harness.Case):
             process.kill()
             process.communicate()
         self.good("rank", *SWEEP, "--store", store)
+        self.same_rows(self.rows(store), wanted)
+        self.assertEqual(self.leftovers(), [])
+
+    def test_kill_side_by_side(self):
+        wanted = self.undisturbed(*BESIDE)
+        store = self.path("rows.db")
+        moments = random.Random(FIXED_SEED)
+        for _ in range(3):
+            process = harness.start("rank", *BESIDE, "--threads", "1", "--store", store)
+            time.sleep(moments.uniform(0.2, 1.0))
+            process.kill()
+            process.communicate()
+        self.good("rank", *BESIDE, "--store", store)
         self.same_rows(self.rows(store), wanted)
         self.assertEqual(self.leftovers(), [])
 
@@ -122,6 +135,23 @@ class Repeated(harness.Case):
             stores.append(self.rows(store))
         self.same_rows(stores[0], stores[1])
         self.same_rows(stores[0], stores[2])
+
+    def test_same_bits_side_by_side(self):
+        """Threads, parts, a narrower plan and a plan around one tube give the same rows."""
+        one, two = self.path("one.db"), self.path("two.db")
+        self.good("rank", *BESIDE, "--threads", "1", "--store", one)
+        for part in ("2/2", "1/2"):
+            self.good("rank", *BESIDE, "--threads", "2", "--part", part, "--store", two)
+        self.same_rows(self.rows(one), self.rows(two))
+        count = len(self.rows(one))
+        narrow = ["--arrangement", "parallel", "--diameter-nm", "0.7:0.76"]
+        done = self.good("rank", *narrow, "--store", one)
+        self.assertIn("rows are in the store already", done.stderr)
+        self.assertRegex(done.stderr, r"the store holds \d+ rows of other plans or parts")
+        alone = self.path("alone.db")
+        self.good("rank", *narrow, "--with", "8,2", "--store", alone)
+        self.assertEqual(len(set(self.rows(alone)) - set(self.rows(one))), 0)
+        self.assertEqual(len(self.rows(one)), count)
 
     def test_neighbours_do_not_matter(self):
         """A row is the same whether it is computed alone, in a small sweep or in a large one."""

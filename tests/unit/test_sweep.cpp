@@ -29,7 +29,7 @@ struct TemporaryFolder {
 Plan small_plan() {
   Plan plan;
   plan.inner_diameter_nm = Interval{0.65, 0.75};
-  plan.gap_nm = {0.335, 0.345};
+  plan.gap_nm = Interval{0.335, 0.345};
   return plan;
 }
 
@@ -81,7 +81,7 @@ TEST_CASE("rows of a plan are all pairs within its bounds, in order, once") {
   for (const Tube& inner : all)
     for (const Tube& outer : all)
       if (plan.inner_diameter_nm->contains(inner.diameter_nm()) &&
-          plan.gap_nm.contains(outer.radius_nm - inner.radius_nm))
+          plan.gap_nm->contains(outer.radius_nm - inner.radius_nm))
         wanted.insert(inner.label() + "@" + outer.label());
   std::set<std::string> found;
   for (std::size_t k = 0; k < rows.size(); ++k) {
@@ -89,6 +89,40 @@ TEST_CASE("rows of a plan are all pairs within its bounds, in order, once") {
     if (k > 0) CHECK(rows.outer(k - 1).radius_nm <= rows.outer(k).radius_nm);
   }
   CHECK(found == wanted);
+}
+
+TEST_CASE("rows side by side are all unordered pairs, like ones too, the thinner tube first") {
+  Plan plan;
+  plan.arrangement = Arrangement::parallel;
+  plan.tubes.diameter_nm = Interval{0.6, 1.3};  // more than one tile of tubes
+  const std::vector<Tube> tubes = candidate_tubes(plan.tubes);
+  REQUIRE(tubes.size() > 64);
+  const PlanRows rows(plan);
+  std::set<std::string> found;
+  for (std::size_t k = 0; k < rows.size(); ++k) {
+    const Placement row = rows[k];
+    CHECK(row.arrangement == Arrangement::parallel);
+    CHECK_FALSE(row.gap_nm);
+    CHECK(rows.inner(k).radius_nm <= rows.outer(k).radius_nm);
+    const std::string first = label_of(row.first), second = label_of(*row.second);
+    CHECK(found.insert(first + " " + second).second);
+    CHECK((first == second || !found.contains(second + " " + first)));
+  }
+  CHECK(found.size() == tubes.size() * (tubes.size() + 1) / 2);
+
+  plan.with = make_tube({8, 8});
+  plan.fixed_gap_nm = 0.5;
+  const PlanRows held(plan);
+  CHECK(held.size() == tubes.size());
+  for (std::size_t k = 0; k < held.size(); ++k) {
+    const Placement row = held[k];
+    CHECK(row.gap_nm == 0.5);
+    // The same row as among all pairs, whichever side the tube is on.
+    CHECK(found.contains(label_of(row.first) + " " + label_of(*row.second)));
+    CHECK((label_of(row.first) == "(8,8)" || label_of(*row.second) == "(8,8)"));
+  }
+  plan.inner = make_tube({5, 5});
+  CHECK_THROWS_AS(PlanRows(plan), InputError);
 }
 
 TEST_CASE("keys differ by walls and by settings") {
@@ -193,6 +227,29 @@ TEST_CASE("a row under another contact target is that of a binder of this target
   }
 }
 
+TEST_CASE("a well under another contact target is that of a binder of this target") {
+  const Binder binder(Catalogs::built_in(), {});
+  for (const auto& [a, b] : {std::pair{Chirality{5, 5}, Chirality{5, 5}}, {{8, 3}, {10, 10}}})
+    for (const std::optional<double> gap : {std::optional<double>(), std::optional(0.4)}) {
+      const Placement pair = side_by_side(make_tube(a), make_tube(b), gap);
+      const Binding row = binder.bind(pair);
+      for (const ContactTarget& target : Catalogs::built_in().contact_targets()) {
+        Settings settings;
+        settings.contact_target = target.name;
+        const Binding wanted = Binder(Catalogs::built_in(), settings).bind(pair);
+        const Binding found = under_target(row, binder, target.name);
+        INFO(row.object_2 << " " << target.name);
+        CHECK(*found.gap_nm == Approx(*wanted.gap_nm).margin(2e-6));
+        CHECK(*found.energy_eV_per_nm == Approx(*wanted.energy_eV_per_nm).epsilon(1e-5));
+        CHECK(*found.dispersion_eV_per_nm == Approx(*wanted.dispersion_eV_per_nm).epsilon(1e-4));
+        CHECK_FALSE(found.energy_mJ_per_m2);
+        if (gap) continue;
+        CHECK(*found.well_depth_eV_per_nm == Approx(*wanted.well_depth_eV_per_nm).epsilon(1e-5));
+        CHECK(*found.stiffness_eV_per_nm3 == Approx(*wanted.stiffness_eV_per_nm3).epsilon(1e-3));
+      }
+    }
+}
+
 TEST_CASE("places: ties by label, empty fields last, spread between targets") {
   const Binder binder(Catalogs::built_in(), {});
   const PlanRows plan(small_plan());
@@ -206,7 +263,7 @@ TEST_CASE("places: ties by label, empty fields last, spread between targets") {
   }
   rows.front().energy_mJ_per_m2.reset();
   rows.front().energy_eV_per_nm.reset();
-  const auto by_energy = ranked(rows, binder, order_of(""));
+  const auto by_energy = ranked(rows, binder, order_of(Plan{}));
   CHECK(by_energy.back().binding.object_1 == rows.front().object_1);
   CHECK(order_of("pull_out_force_nN").descending);
   CHECK_THROWS_AS(order_of("energy"), InputError);
