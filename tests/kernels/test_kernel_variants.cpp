@@ -2,6 +2,7 @@
 // changes the variant as it goes.
 #include <gapwright/catalog/catalogs.hpp>
 #include <gapwright/join/coaxial.hpp>
+#include <gapwright/join/parallel.hpp>
 #include <gapwright/math/kernel.hpp>
 #include <gapwright/response/shell_response.hpp>
 
@@ -88,6 +89,33 @@ TEST_CASE("kernel variants agree to rounding") {
       }
   }
   if (compared == 0) WARN("this machine has the portable kernels alone");
+}
+
+TEST_CASE("kernel variants agree on tubes side by side") {
+  const Catalogs& catalogs = Catalogs::built_in();
+  const Tube a = make_tube({6, 4}), b = make_tube({9, 1});
+  const Nodes nodes = make_nodes(1e-5);
+  const double distance = a.radius_nm + b.radius_nm + 0.3;
+  const Window window = parallel_window(a.radius_nm, b.radius_nm, distance, nodes);
+  select_kernel(KernelVariant::portable);
+  const auto scatterer = [&](const Tube& tube) {
+    return shell_scatterer(Channel::outward,
+                           tube_response(tube, catalogs.hopping(), {}, nodes, window),
+                           catalogs.background(), window);
+  };
+  const Scatterer one = scatterer(a), other = scatterer(b);
+  const ParallelDensity plain = parallel_density(one, other, distance, window, true);
+  for (const KernelVariant variant : {KernelVariant::avx2, KernelVariant::avx512}) {
+    if (!kernel_available(variant)) continue;
+    select_kernel(variant);
+    const ParallelDensity fast = parallel_density(one, other, distance, window, true);
+    INFO(kernel_word(variant));
+    CHECK(fast.positive);
+    CHECK(difference(plain.energy.full, fast.energy.full) < 1e-10);
+    CHECK(difference(plain.first_round_trip.full, fast.first_round_trip.full) < 1e-12);
+    CHECK(difference(plain.distance_slope.full, fast.distance_slope.full) < 1e-10);
+    CHECK(difference(plain.first_slope.full, fast.first_slope.full) < 1e-12);
+  }
 }
 
 TEST_CASE("a variant that is missing is refused") {
