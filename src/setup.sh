@@ -5,7 +5,7 @@ set -eu
 
 cd "$(dirname "$0")/.."
 mode=${1:-}
-packages="g++ cmake ninja-build libeigen3-dev libtbb-dev libfmt-dev libcli11-dev
+packages="g++ cmake ninja-build libeigen3-dev libspectra-dev libtbb-dev libfmt-dev libcli11-dev
   nlohmann-json3-dev libtomlplusplus-dev libsqlite3-dev"
 case $mode in
   run) ;;

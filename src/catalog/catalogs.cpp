@@ -9,8 +9,8 @@ namespace gapwright {
 namespace {
 
 const std::vector<std::string>& file_names() {
-  static const std::vector<std::string> names = {"hopping.toml", "background.toml", "contact.toml",
-                                                 "media.toml", "checks.toml"};
+  static const std::vector<std::string> names = {"hopping.toml", "background.toml", "ribbons.toml",
+                                                 "contact.toml", "media.toml",      "checks.toml"};
   return names;
 }
 
@@ -74,6 +74,7 @@ const Catalogs& Catalogs::built_in() {
     Catalogs all;
     all.hopping_sets_ = read_hopping_sets(built_in_file("hopping.toml"));
     all.backgrounds_ = read_backgrounds(built_in_file("background.toml"));
+    all.ribbon_edges_ = read_ribbon_edges(built_in_file("ribbons.toml"));
     all.contact_targets_ = read_contact_targets(built_in_file("contact.toml"));
     all.media_ = read_media(built_in_file("media.toml"));
     all.checks_ = read_checks(built_in_file("checks.toml"), names_of(all.hopping_sets_));
@@ -99,6 +100,8 @@ Catalogs Catalogs::from_folder(const std::filesystem::path& folder) {
   });
   replace("background.toml",
           [&](const TomlReader& file) { all.backgrounds_ = read_backgrounds(file); });
+  replace("ribbons.toml",
+          [&](const TomlReader& file) { all.ribbon_edges_ = read_ribbon_edges(file); });
   replace("contact.toml",
           [&](const TomlReader& file) { all.contact_targets_ = read_contact_targets(file); });
   replace("media.toml", [&](const TomlReader& file) { all.media_ = read_media(file); });
@@ -114,6 +117,10 @@ const HoppingSet& Catalogs::hopping(const std::string& name) const {
 
 const Background& Catalogs::background(const std::string& name) const {
   return entry_of(backgrounds_, name, "background");
+}
+
+const RibbonEdges& Catalogs::ribbon_edges(const std::string& name) const {
+  return entry_of(ribbon_edges_, name, "set of ribbon edges");
 }
 
 const ContactTarget& Catalogs::contact_target(const std::string& name) const {
@@ -148,6 +155,8 @@ std::string Catalogs::hash() const {
         .add(background.in_plane_energy_eV)
         .add(background.normal_strength_nm)
         .add(background.normal_energy_eV);
+  for (const RibbonEdges& edges : ribbon_edges_)
+    hash.add(edges.name).add(edges.edge_bond).add(edges.repulsion_eV);
   for (const ContactTarget& target : contact_targets_)
     hash.add(target.name)
         .add(static_cast<std::int64_t>(target.kind))

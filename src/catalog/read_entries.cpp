@@ -103,6 +103,22 @@ Background read_background(const TomlReader& entry, const std::vector<std::strin
   return background;
 }
 
+RibbonEdges read_edges(const TomlReader& entry, const std::vector<std::string>& taken) {
+  RibbonEdges edges;
+  edges.name = read_name(entry, taken);
+  edges.title = entry.text("title");
+  const Quantity bond = read_quantity(entry, "edge_bond", {"1"});
+  edges.edge_bond = positive(entry, "edge_bond", bond);
+  add_source(edges.source, bond.source);
+  const Quantity repulsion = read_quantity(entry, "repulsion", {"eV"});
+  edges.repulsion_eV = repulsion.values[0];
+  if (edges.repulsion_eV < 0)
+    throw entry.error("repulsion", "'repulsion' is negative", "a number not below 0 eV");
+  add_source(edges.source, repulsion.source);
+  entry.finish();
+  return edges;
+}
+
 // Per area of the place where two sheets meet: "meV/atom" counts the atoms of one sheet, "meV/atom
 // of both" those of the two sheets that face each other.
 double energy_per_area(const Quantity& energy) {
@@ -159,6 +175,10 @@ std::vector<HoppingSet> read_hopping_sets(const TomlReader& file) {
 
 std::vector<Background> read_backgrounds(const TomlReader& file) {
   return read_all<Background>(file, "background", read_background);
+}
+
+std::vector<RibbonEdges> read_ribbon_edges(const TomlReader& file) {
+  return read_all<RibbonEdges>(file, "ribbon", read_edges);
 }
 
 std::vector<ContactTarget> read_contact_targets(const TomlReader& file) {

@@ -15,6 +15,7 @@ namespace gapwright {
 /// expected, a name used twice.
 std::vector<HoppingSet> read_hopping_sets(const TomlReader& file);
 std::vector<Background> read_backgrounds(const TomlReader& file);
+std::vector<RibbonEdges> read_ribbon_edges(const TomlReader& file);
 std::vector<ContactTarget> read_contact_targets(const TomlReader& file);
 std::vector<Medium> read_media(const TomlReader& file);
 /// `hopping_names` are those a row may ask for.

@@ -1,4 +1,5 @@
 #include "commands.hpp"
+#include "describe_ribbon.hpp"
 #include "exit_code.hpp"
 #include "output.hpp"
 #include "row_text.hpp"
@@ -9,7 +10,6 @@
 #include <gapwright/catalog/constants.hpp>
 
 #include <cmath>
-#include <sstream>
 
 #include <fmt/format.h>
 
@@ -63,10 +63,6 @@ TubeReport report_of(const Tube& tube, const HoppingSet& hopping) {
   return report;
 }
 
-Json energy_or_null(double energy_eV) {
-  return std::isfinite(energy_eV) ? Json(energy_eV + 0.0) : Json(nullptr);
-}
-
 Json tube_json(const TubeReport& report) {
   const Tube& tube = report.tube;
   return {{"object", tube.label()},
@@ -84,42 +80,22 @@ Json tube_json(const TubeReport& report) {
           {"response", report.response}};
 }
 
-std::string energy_text(double energy_eV, int decimals) {
-  return std::isfinite(energy_eV) ? fixed(energy_eV, decimals) + " eV" : "none";
-}
-
-// Lines of some 76 characters under the values of a block.
-std::string wrapped(const std::string& sentence) {
-  std::string text, line;
-  std::istringstream words(sentence);
-  for (std::string word; words >> word;) {
-    if (!line.empty() && shown_width(line) + 1 + shown_width(word) > 76) {
-      text += line + "\n" + std::string(16, ' ');
-      line.clear();
-    }
-    line += (line.empty() ? "" : " ") + word;
-  }
-  return text + line;
-}
-
 std::string tube_text(const TubeReport& report) {
   const Tube& tube = report.tube;
-  const auto line = [](const char* name, const std::string& value, const char* remark = "") {
-    return fmt::format("  {:<14}{}{}{}\n", name, value, *remark == '\0' ? "" : "   ", remark);
-  };
   return tube.label() + "\n" +
-         line("kind", shape_word(tube.shape) + ", " + conduction_word(report)) +
-         line("diameter", fixed(tube.diameter_nm(), 5) + " nm") +
-         line("chiral angle", fixed(tube.chiral_angle_deg(), 4) + " deg", "0 zigzag, 30 armchair") +
-         line("cell",
-              fmt::format("{} atoms over {} nm", tube.atoms_per_cell(), fixed(tube.period_nm, 5))) +
-         line("mass", fixed(tube.mass_per_nm_zg(), 4) + " zg/nm",
-              fmt::format("{} atoms/nm", fixed(tube.atoms_per_nm(), 2)).c_str()) +
-         line("gap", energy_text(report.gaps.band_gap_eV, 5)) +
-         line("E11, E22",
-              energy_text(report.gaps.e11_eV, 4) + ", " + energy_text(report.gaps.e22_eV, 4),
-              "single-particle: excitons are not in them") +
-         line("response", wrapped(report.response));
+         block_line("kind", shape_word(tube.shape) + ", " + conduction_word(report)) +
+         block_line("diameter", fixed(tube.diameter_nm(), 5) + " nm") +
+         block_line("chiral angle", fixed(tube.chiral_angle_deg(), 4) + " deg",
+                    "0 zigzag, 30 armchair") +
+         block_line("cell", fmt::format("{} atoms over {} nm", tube.atoms_per_cell(),
+                                        fixed(tube.period_nm, 5))) +
+         block_line("mass", fixed(tube.mass_per_nm_zg(), 4) + " zg/nm",
+                    fmt::format("{} atoms/nm", fixed(tube.atoms_per_nm(), 2)).c_str()) +
+         block_line("gap", energy_text(report.gaps.band_gap_eV, 5)) +
+         block_line("E11, E22",
+                    energy_text(report.gaps.e11_eV, 4) + ", " + energy_text(report.gaps.e22_eV, 4),
+                    "single-particle: excitons are not in them") +
+         block_line("response", wrapped(report.response));
 }
 
 std::string walls_text(const TubeObject& object, const HoppingSet& hopping) {
@@ -168,12 +144,26 @@ std::string sheet_text() {
       fixed(1 / constants::atom_area_nm2, 3), wrapped(sheet_response));
 }
 
+Json object_json(const Object& object, const Catalogs& catalogs, const HoppingSet& hopping) {
+  if (const auto* walls = std::get_if<TubeObject>(&object)) return walls_json(*walls, hopping);
+  if (const auto* ribbon = std::get_if<RibbonObject>(&object))
+    return ribbon_json(ribbon->ribbon, hopping, catalogs.ribbon_edges());
+  return sheet_json();
+}
+
+std::string object_text(const Object& object, const Catalogs& catalogs, const HoppingSet& hopping) {
+  if (const auto* walls = std::get_if<TubeObject>(&object)) return walls_text(*walls, hopping);
+  if (const auto* ribbon = std::get_if<RibbonObject>(&object))
+    return ribbon_text(ribbon->ribbon, hopping, catalogs.ribbon_edges());
+  return sheet_text();
+}
+
 }  // namespace
 
 int describe(const Words& words) {
   if (words.operands.empty())
     throw InputError(
-        {"no object", "describe", {}, "labels such as (10,10), 5,5@10,10, graphene", {}});
+        {"no object", "describe", {}, "labels such as (10,10), 5,5@10,10, graphene, 13-AGNR", {}});
   const Catalogs catalogs = load_catalogs(words);
   const Settings settings = read_settings(words, catalogs);
   const HoppingSet& hopping = catalogs.hopping(settings.hopping);
@@ -183,11 +173,10 @@ int describe(const Words& words) {
   std::string out;
   for (const ParsedLabel& parsed : objects) {
     for (const std::string& remark : parsed.notes) note("note: " + remark);
-    const TubeObject* walls = std::get_if<TubeObject>(&parsed.object);
     if (words.flag("--json"))
-      out += (walls ? walls_json(*walls, hopping) : sheet_json()).dump() + "\n";
+      out += object_json(parsed.object, catalogs, hopping).dump() + "\n";
     else
-      out += (out.empty() ? "" : "\n") + (walls ? walls_text(*walls, hopping) : sheet_text());
+      out += (out.empty() ? "" : "\n") + object_text(parsed.object, catalogs, hopping);
   }
   print(out);
   return good;

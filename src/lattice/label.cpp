@@ -1,5 +1,6 @@
 #include "label_text.hpp"
 #include "nearest_tube.hpp"
+#include "ribbon_label.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
 #include <gapwright/lattice/label.hpp>
@@ -16,7 +17,8 @@ using label_text::blanks_removed;
 using label_text::quoted;
 
 constexpr const char* expected_object =
-    "a tube such as (10,10) or 10,10, walls such as 5,5@10,10 (inner@outer), or graphene";
+    "a tube such as (10,10) or 10,10, walls such as 5,5@10,10 (inner@outer), graphene, or a ribbon "
+    "such as 13-AGNR or 6-ZGNR";
 
 /// Indices as typed, before they are made canonical; capped far outside the accepted range.
 struct TypedIndices {
@@ -92,8 +94,10 @@ TypedIndices WallReader::canonical(TypedIndices typed, std::vector<std::string>&
 
 void WallReader::refuse_text(std::string_view text) const {
   if (text == "graphene") refuse("graphene is flat and no wall", expected_object);
-  if (const auto kind = label_text::ribbon_or_wire(text); !kind.empty())
-    refuse(fmt::format("{} is {}, which this version does not know", quoted(text), kind),
+  if (label_text::is_ribbon(text))
+    refuse(fmt::format("{} is a ribbon and no wall", quoted(text)), expected_object);
+  if (text.starts_with("wire"))
+    refuse(fmt::format("{} is a wire, which this version does not know", quoted(text)),
            expected_object);
   const bool comma = text.find(',') != std::string_view::npos;
   if (const auto pair = label_text::two_numbers(text))
@@ -140,6 +144,8 @@ ParsedLabel parse_label(std::string_view label) {
   const std::string text = blanks_removed(label);
   if (text.empty()) throw InputError({"the label is empty", "label ''", {}, expected_object, {}});
   if (text == "graphene") return {SheetObject{}, {}};
+  if (label_text::is_ribbon(text) && text.find('@') == std::string::npos)
+    return {RibbonObject{read_ribbon(text)}, {}};
 
   const std::vector<std::string> parts = label_text::split(text, '@');
   ParsedLabel parsed;
@@ -155,6 +161,7 @@ ParsedLabel parse_label(std::string_view label) {
 
 std::string label_of(const Object& object) {
   if (std::holds_alternative<SheetObject>(object)) return "graphene";
+  if (const auto* ribbon = std::get_if<RibbonObject>(&object)) return ribbon->ribbon.label();
   std::string text;
   for (const Tube& wall : std::get<TubeObject>(object).walls)
     text += (text.empty() ? "" : "@") + wall.label();

@@ -106,12 +106,11 @@ std::optional<std::vector<long>> two_numbers(std::string_view text) {
   return numbers;
 }
 
-std::string_view ribbon_or_wire(std::string_view text) {
-  if (text.starts_with("wire")) return "a wire";
+bool is_ribbon(std::string_view text) {
   std::string upper(text);
   for (char& c : upper)
     if (c >= 'a' && c <= 'z') c = static_cast<char>(c - 'a' + 'A');
-  return upper.ends_with("GNR") ? "a ribbon" : "";
+  return upper.find("GNR") != std::string::npos;
 }
 
 }  // namespace gapwright::label_text

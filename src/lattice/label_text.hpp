@@ -23,7 +23,7 @@ std::optional<std::vector<long>> whole_numbers(std::string_view text, char separ
 /// The numbers of a text that holds exactly two, neither signed, whatever stands between.
 std::optional<std::vector<long>> two_numbers(std::string_view text);
 
-/// "a ribbon" or "a wire" when the text is written as one, else "".
-std::string_view ribbon_or_wire(std::string_view text);
+/// True when "GNR" stands in it, in capitals or not.
+bool is_ribbon(std::string_view text);
 
 }  // namespace gapwright::label_text

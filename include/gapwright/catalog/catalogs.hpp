@@ -17,8 +17,8 @@ class Catalogs {
  public:
   /// The catalogues compiled into the program. Throws InputError only if the build is broken.
   static const Catalogs& built_in();
-  /// The same files read from a folder (hopping.toml, background.toml, contact.toml, media.toml,
-  /// checks.toml).
+  /// The same files read from a folder (hopping.toml, background.toml, ribbons.toml, contact.toml,
+  /// media.toml, checks.toml).
   /// A missing file keeps the built-in one; built-in checks that ask for a hopping set the folder
   /// does not hold are left out. Throws InputError with file, line, text and caret.
   static Catalogs from_folder(const std::filesystem::path& folder);
@@ -26,12 +26,14 @@ class Catalogs {
   /// Entry by name; an empty name is the default. Throws InputError with the nearest name.
   const HoppingSet& hopping(const std::string& name = {}) const;
   const Background& background(const std::string& name = {}) const;
+  const RibbonEdges& ribbon_edges(const std::string& name = {}) const;
   const ContactTarget& contact_target(const std::string& name = {}) const;
   /// "vacuum" is always there and the default.
   const Medium& medium(const std::string& name = {}) const;
 
   const std::vector<HoppingSet>& hopping_sets() const { return hopping_sets_; }
   const std::vector<Background>& backgrounds() const { return backgrounds_; }
+  const std::vector<RibbonEdges>& ribbon_edge_sets() const { return ribbon_edges_; }
   const std::vector<ContactTarget>& contact_targets() const { return contact_targets_; }
   const std::vector<Medium>& media() const { return media_; }
   const std::vector<CheckRow>& checks() const { return checks_; }
@@ -43,6 +45,7 @@ class Catalogs {
  private:
   std::vector<HoppingSet> hopping_sets_;
   std::vector<Background> backgrounds_;
+  std::vector<RibbonEdges> ribbon_edges_;
   std::vector<ContactTarget> contact_targets_;
   std::vector<Medium> media_;
   std::vector<CheckRow> checks_;

@@ -36,6 +36,15 @@ struct Background {
   double normal_nm(double xi_eV) const;    ///< α_⊥(iξ) [nm]
 };
 
+/// Edges of nanoribbons (METHODS §2).
+struct RibbonEdges {
+  std::string name;
+  std::string title;
+  double edge_bond = 1.0;     ///< hopping of the two edge dimer lines of armchair ribbons, over t
+  double repulsion_eV = 0.0;  ///< mean-field Hubbard U of zigzag ribbons
+  std::string source;
+};
+
 /// How a contact target is to be met (METHODS §6).
 enum class TargetKind {
   pair,      ///< two sheets

@@ -1,6 +1,7 @@
 // Object labels as the trade writes them, and back.
 #pragma once
 
+#include <gapwright/lattice/ribbon.hpp>
 #include <gapwright/lattice/tube.hpp>
 
 #include <string>
@@ -21,22 +22,29 @@ struct SheetObject {
   bool operator==(const SheetObject&) const = default;
 };
 
+/// A graphene nanoribbon.
+struct RibbonObject {
+  Ribbon ribbon;
+  bool operator==(const RibbonObject&) const = default;
+};
+
 /// What a label can name.
-using Object = std::variant<TubeObject, SheetObject>;
+using Object = std::variant<TubeObject, SheetObject, RibbonObject>;
 
 struct ParsedLabel {
   Object object;
   std::vector<std::string> notes;  ///< e.g. "(5,8) is the mirror image of (8,5)"
 };
 
-/// Parses (10,10), 10,10, 5,5@10,10 (inner@outer, more by more @), graphene. m > n is accepted as
-/// the mirror image and noted. Blanks around parts are allowed. Throws InputError naming the label
-/// and, where there is one, the nearest object that is accepted, when it is anything else, when a
-/// diameter is outside 0.3 … 20 nm, or when walls are not in rising order with gaps of at least
-/// 0.2 nm.
+/// Parses (10,10), 10,10, 5,5@10,10 (inner@outer, more by more @), graphene, 13-AGNR, 6-ZGNR. m > n
+/// is accepted as the mirror image and noted. Blanks around parts are allowed. Throws InputError
+/// naming the label and, where there is one, the nearest object that is accepted, when it is
+/// anything else, when a diameter is outside 0.3 … 20 nm, when walls are not in rising order with
+/// gaps of at least 0.2 nm, or when a ribbon has fewer than 3 (AGNR), 2 (ZGNR) or more than 3000
+/// lines.
 ParsedLabel parse_label(std::string_view label);
 
-/// "(5,5)@(10,10)", "graphene".
+/// "(5,5)@(10,10)", "graphene", "13-AGNR".
 std::string label_of(const Object& object);
 
 }  // namespace gapwright
