@@ -15,17 +15,27 @@ using constants::pi;
 
 constexpr int bands_followed = 2;
 
-/// From k = 0 to π/period, dense about the points where graphene's Dirac cones fold to.
+double dirac_wave(const Ribbon& ribbon) {
+  return ribbon.edge == RibbonEdge::armchair ? 0.0 : 2 * pi / (3 * ribbon.period_nm());
+}
+
+/// Further from the Dirac point than this the bulk sub-bands of a ribbon only rise.
+double bulk_reach(const Ribbon& ribbon) {
+  return 12 / ribbon.width_nm();
+}
+
+/// From k = 0 to π/period, dense about the point where graphene's Dirac cones fold to. Left out is
+/// what has neither a minimum of the bulk nor, for zigzag, the bands of the edges.
 std::vector<double> sample_waves(const Ribbon& ribbon) {
-  const double zone = pi / ribbon.period_nm();
-  const double dirac =
-      ribbon.edge == RibbonEdge::armchair ? 0.0 : 2 * pi / (3 * ribbon.period_nm());
   constexpr double ratio = 1.5;
+  const double zone = pi / ribbon.period_nm(), dirac = dirac_wave(ribbon);
+  const double low = std::max(0.0, dirac - bulk_reach(ribbon));
+  const double high = ribbon.edge == RibbonEdge::zigzag ? zone : std::min(zone, bulk_reach(ribbon));
   const double widest = zone / 24;
-  std::vector<double> waves{0.0, dirac, zone};
+  std::vector<double> waves{low, dirac, high};
   for (const double side : {-1.0, 1.0}) {
     double reach = 0.1 / ribbon.width_nm();
-    for (double k = dirac + side * reach; k > 0 && k < zone; k = dirac + side * reach) {
+    for (double k = dirac + side * reach; k > low && k < high; k = dirac + side * reach) {
       waves.push_back(k);
       reach += std::min((ratio - 1) * reach, widest);
     }
@@ -44,8 +54,16 @@ class SectorBands {
         count_(std::min(bands_followed, hamiltonian.sector_size(sector) / 2)) {}
 
   int count() const { return count_; }
+  /// The lowest bands, infinite where they are not followed.
   std::vector<double> at(double k) const {
-    return conduction_energies_eV(hamiltonian_, sector_, k, count_);
+    const Ribbon& ribbon = hamiltonian_.ribbon();
+    const bool bulk = std::abs(k - dirac_wave(ribbon)) <= bulk_reach(ribbon);
+    auto energies = conduction_energies_eV(hamiltonian_, sector_, k, bulk ? count_ : 1);
+    energies.resize(static_cast<std::size_t>(count_), std::numeric_limits<double>::infinity());
+    return energies;
+  }
+  double at(double k, int band) const {
+    return conduction_energies_eV(hamiltonian_, sector_, k, band + 1)[band];
   }
 
  private:
@@ -63,7 +81,7 @@ struct Minimum {
 Minimum refine(const SectorBands& bands, int band, double low, double high) {
   constexpr double golden = 0.6180339887498949;
   constexpr int sections = 26;
-  const auto energy = [&](double k) { return bands.at(k)[band]; };
+  const auto energy = [&](double k) { return bands.at(k, band); };
   double left = high - golden * (high - low), right = low + golden * (high - low);
   double at_left = energy(left), at_right = energy(right);
   for (int i = 0; i < sections; ++i) {
@@ -94,7 +112,7 @@ void add_minima(const SectorBands& bands, const std::vector<double>& waves,
       const double here = energies[i][band];
       const double before = energies[i == 0 ? 1 : i - 1][band];
       const double after = energies[i == last ? last - 1 : i + 1][band];
-      if (here > before || here > after) continue;
+      if (here > before || here > after || std::isinf(here)) continue;
       Minimum best{waves[i], here};
       if (i > 0 && i < last) {
         const Minimum inside = refine(bands, band, waves[i - 1], waves[i + 1]);

@@ -42,7 +42,7 @@ Eigen::SparseMatrix<double> sparse(const BandMatrix& h) {
 /// The `count` lowest positive energies by shift-and-invert about `shift`, or nothing when the
 /// shifted matrix is singular or the iteration does not settle.
 std::optional<std::vector<double>> sparse_energies(const BandMatrix& h, int count, double shift) {
-  const int wanted = std::min(2 * count + 2, h.size - 1);
+  const int wanted = std::min(2 * count, h.size - 1);
   const int basis = std::min(h.size, std::max(2 * wanted + 8, 20));
   const Eigen::SparseMatrix<double> matrix = sparse(h);  // the operation only refers to it
   Spectra::SparseSymShiftSolve<double> operation(matrix);

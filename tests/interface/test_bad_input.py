@@ -22,7 +22,7 @@ class Labels(harness.Case):
         self.refused(["describe", "10;10"], "10;10", "expected", "nearest: (10,10)")
 
     def test_not_known(self):
-        self.refused(["describe", "13-AGNR"], "ribbon")
+        self.refused(["describe", "13-GNR"], "ribbon")
         self.refused(["describe", "graphen"], "nearest: graphene")
         self.refused(["describe", ""], "empty")
 
