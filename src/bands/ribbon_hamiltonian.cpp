@@ -61,7 +61,7 @@ BandMatrix RibbonHamiltonian::slope(int sector, double k_per_nm) const {
                                               : zigzag(k_per_nm, true);
 }
 
-// F = t(e^{ika_cc} D + e^{-ika_cc/2} J): D the dimers, J the neighbouring rows (METHODS 2.6).
+// F = t(e^{ika_cc} D + e^{-ika_cc/2} J): D the dimers, J the neighbouring rows (METHODS 2.5).
 BandMatrix RibbonHamiltonian::armchair(int sector, double k, bool slope) const {
   const double bond = constants::bond_nm;
   const Complex unit(0, 1);

@@ -149,7 +149,10 @@ std::vector<double> row_occupations(int chains, double hopping_eV,
   const std::size_t rows = 2 * static_cast<std::size_t>(chains);
   const int count = static_cast<int>(waves.nodes.size());
   std::vector<double> sums(rows * waves.nodes.size());
-#pragma omp parallel num_threads(inner_threads())
+  // Below this, waking threads costs more than they save.
+  const double steps = double(count) * double(rows) * double(frequencies.nodes.size());
+  const int threads = steps < 2e7 ? 1 : inner_threads();
+#pragma omp parallel num_threads(threads)
   {
     GreenSum green(frequencies, potential_eV);
 #pragma omp for schedule(static)

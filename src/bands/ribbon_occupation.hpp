@@ -13,7 +13,7 @@ struct OccupationGrid {
 };
 
 /// n_j = 1/2 + (1/π)∫₀^∞dω Re G_jj(iω), averaged over k, of the rows of `chains` chains (METHODS
-/// 8.10). Panels of k shrink towards the Dirac point 2π/3a, where bands of a wide ribbon bend most.
+/// 8.9). Panels of k shrink towards the Dirac point 2π/3a, where bands of a wide ribbon bend most.
 std::vector<double> row_occupations(int chains, double hopping_eV,
                                     const std::vector<double>& potential_eV,
                                     const OccupationGrid& grid);

@@ -16,9 +16,9 @@ namespace gapwright {
 
 namespace {
 
-/// Sectors up to this size are solved densely (tests/bench/bench_ribbon).
-constexpr int widest_dense_tridiagonal = 120;
-constexpr int widest_dense = 60;
+/// Sectors up to this size are solved densely; above, the few sparse states are faster (measured by
+/// tests/bench/bench_ribbon).
+constexpr int widest_dense = 72;
 
 Eigen::MatrixXd dense(const BandMatrix& h) {
   Eigen::MatrixXd full = Eigen::MatrixXd::Zero(h.size, h.size);
@@ -88,9 +88,7 @@ std::vector<double> conduction_energies_eV(const RibbonHamiltonian& hamiltonian,
     throw std::domain_error(
         fmt::format("conduction_energies_eV: count = {}, required: 1 … {}", count, h.size / 2));
   if (method == EigenMethod::automatic)
-    method = h.size <= (h.reach == 1 ? widest_dense_tridiagonal : widest_dense)
-                 ? EigenMethod::dense
-                 : EigenMethod::sparse;
+    method = h.size <= widest_dense ? EigenMethod::dense : EigenMethod::sparse;
   if (method == EigenMethod::sparse)
     for (const double shift : {0.0, 1e-7 * hamiltonian.hopping_eV()}) try {
         if (auto energies = sparse_energies(h, count, shift)) return *energies;

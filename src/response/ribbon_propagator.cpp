@@ -58,19 +58,30 @@ class PairTransform {
   std::vector<std::vector<Complex>> phases_;
 };
 
-/// Series over k of many pairs, kept k by k as they are made.
+/// Two series over k for each pair, kept k by k as they are made.
 class SeriesStore {
  public:
-  SeriesStore(std::size_t series, int points) : series_(series), values_(series * points) {}
+  SeriesStore(std::size_t pairs, int points)
+      : series_(2 * pairs), points_(points), values_(series_ * points), block_(block * points) {}
   Complex* at(int i) { return &values_[series_ * i]; }
-  /// One series, contiguous.
-  void gather(std::size_t s, int points, Complex* out) const {
-    for (int i = 0; i < points; ++i) out[i] = values_[series_ * i + s];
+  /// One series, contiguous; ascending calls read the store in whole cache lines.
+  const Complex* series(std::size_t s) {
+    const std::size_t first = s / block * block;
+    if (s == first) {
+      const std::size_t count = std::min(block, series_ - first);
+      for (int i = 0; i < points_; ++i)
+        for (std::size_t b = 0; b < count; ++b)
+          block_[b * points_ + i] = values_[series_ * i + first + b];
+    }
+    return &block_[(s - first) * points_];
   }
 
  private:
+  static constexpr std::size_t block = 8;
   std::size_t series_;
+  int points_;
   std::vector<Complex> values_;
+  std::vector<Complex> block_;
 };
 
 /// The sectors' propagators give A_jj' = Σ z_j z_j'* e^{-Eτ} between left atoms and B_jj' = Σ z_j
@@ -93,7 +104,7 @@ class ArmchairPropagator : public RibbonPropagator {
 
   Eigen::MatrixXd response(double time) const override {
     const int points = grid_.waves / 2 + 1;
-    SeriesStore store(2 * pairs_.size(), points);
+    SeriesStore store(pairs_.size(), points);
     Eigen::MatrixXd even, odd;
     for (int i = 0; i < points; ++i) {
       propagate(grid_.states[i][0], time, even);
@@ -104,7 +115,7 @@ class ArmchairPropagator : public RibbonPropagator {
         store.at(i)[2 * p + 1] = sum.across * transform_.phases(kinds_across_[p])[i];
       }
     }
-    return along(store, points);
+    return along(store);
   }
 
  private:
@@ -142,17 +153,14 @@ class ArmchairPropagator : public RibbonPropagator {
     return sum;
   }
 
-  Eigen::MatrixXd along(const SeriesStore& store, int points) const {
+  Eigen::MatrixXd along(SeriesStore& store) const {
     Eigen::MatrixXd result(pairs_.size(), transform_.columns());
-    std::vector<Complex> series(points);
     Eigen::ArrayXd values(grid_.waves);
     const double scale = -8 / ribbon_.period_nm();
     for (std::size_t p = 0; p < pairs_.size(); ++p) {
-      store.gather(2 * p, points, series.data());
-      transform_.lattice().to_positions(series.data(), values.data());
+      transform_.lattice().to_positions(store.series(2 * p), values.data());
       result.row(p) = values.square().matrix().transpose() * transform_.cosines(kinds_alike_[p]);
-      store.gather(2 * p + 1, points, series.data());
-      transform_.lattice().to_positions(series.data(), values.data());
+      transform_.lattice().to_positions(store.series(2 * p + 1), values.data());
       result.row(p) -= values.square().matrix().transpose() * transform_.cosines(kinds_across_[p]);
     }
     return scale * result;
@@ -182,7 +190,7 @@ class ZigzagPropagator : public RibbonPropagator {
 
   Eigen::MatrixXd response(double time) const override {
     const int points = grid_.waves / 2 + 1, last = ribbon_.rows() - 1;
-    SeriesStore store(2 * pairs_.size(), points);
+    SeriesStore store(pairs_.size(), points);
     Eigen::MatrixXd sum;
     for (int i = 0; i < points; ++i) {
       propagate(grid_.states[i][0], time, sum);
@@ -193,20 +201,17 @@ class ZigzagPropagator : public RibbonPropagator {
         store.at(i)[2 * p + 1] = phase * sum(last - row, last - other);
       }
     }
-    return along(store, points);
+    return along(store);
   }
 
  private:
-  Eigen::MatrixXd along(const SeriesStore& store, int points) const {
+  Eigen::MatrixXd along(SeriesStore& store) const {
     Eigen::MatrixXd result(pairs_.size(), transform_.columns());
-    std::vector<Complex> series(points);
     Eigen::ArrayXd values(grid_.waves), mirrored(grid_.waves);
     const double scale = -4 / ribbon_.period_nm();
     for (std::size_t p = 0; p < pairs_.size(); ++p) {
-      store.gather(2 * p, points, series.data());
-      transform_.lattice().to_positions(series.data(), values.data());
-      store.gather(2 * p + 1, points, series.data());
-      transform_.lattice().to_positions(series.data(), mirrored.data());
+      transform_.lattice().to_positions(store.series(2 * p), values.data());
+      transform_.lattice().to_positions(store.series(2 * p + 1), mirrored.data());
       values *= mirrored;
       const double sign = (pairs_[p].row + pairs_[p].other) % 2 == 0 ? scale : -scale;
       result.row(p) = sign * (values.matrix().transpose() * transform_.cosines(kinds_[p]));

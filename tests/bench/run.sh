@@ -6,6 +6,7 @@ root=$(cd "$(dirname "$0")/../.." && pwd)
 build=${1:-"$root/build/bench"}
 cmake -S "$root" -B "$build" -G Ninja -DCMAKE_BUILD_TYPE=Release -DGAPWRIGHT_BENCH=ON \
   -DGAPWRIGHT_TESTS=OFF >&2
-cmake --build "$build" --target bench_coaxial bench_parallel >&2
+cmake --build "$build" --target bench_coaxial bench_parallel bench_ribbon >&2
 "$build/tests/bench/bench_coaxial" "$root/examples/double-wall.toml"
-exec "$build/tests/bench/bench_parallel"
+"$build/tests/bench/bench_parallel"
+exec "$build/tests/bench/bench_ribbon"

@@ -28,6 +28,21 @@ def read_csv(text):
 
 
 class Describe(harness.Case):
+    def test_ribbons(self):
+        done = self.good("describe", "13-AGNR", "6-zgnr", "--json")
+        armchair, zigzag = map(json.loads, done.stdout.splitlines())
+        self.assertEqual(armchair["object"], "13-AGNR")
+        self.assertEqual(armchair["atoms_per_cell"], 26)
+        self.assertAlmostEqual(armchair["period_nm"], 0.426, places=6)
+        # Exact diagonalisation of the model of Son, Cohen & Louie, PRL 97, 216803 (2006).
+        self.assertAlmostEqual(armchair["band_gap_eV"], 0.85812, places=4)
+        self.assertEqual(armchair["e11_eV"], armchair["band_gap_eV"])
+        self.assertGreater(armchair["e22_eV"], armchair["e11_eV"])
+        self.assertEqual(zigzag["shape"], "zigzag")
+        self.assertEqual(zigzag["kind"], "semiconducting")
+        self.assertIn("U = 1.94 eV", self.good("describe", "6-ZGNR").stdout)
+        self.refused(["bind", "13-AGNR", "10,10"], "13-AGNR", "binds tubes")
+
     def test_one_object_a_line(self):
         done = self.good("describe", "10,10", "(6,5)", "5,5@10,10", "graphene", "--json")
         armchair, chiral, walls, sheet = map(json.loads, done.stdout.splitlines())

@@ -66,6 +66,20 @@ normal_strength.range = [0, 0.4]
 normal_strength.source = "somebody (1998)"
 )toml";
 
+const std::string ribbon_text = R"toml(
+[[ribbon]]
+name = "one"
+title = "One"
+edge_bond.value = 1.1
+edge_bond.unit = "1"
+edge_bond.range = [1.0, 1.3]
+edge_bond.source = "somebody (2006)"
+repulsion.value = 2.0
+repulsion.unit = "eV"
+repulsion.range = [-5, 5]
+repulsion.source = "somebody (2006)"
+)toml";
+
 const std::string contact_text = R"toml(
 [[target]]
 name = "one"
@@ -106,10 +120,14 @@ struct Broken {
 const std::string& text_of(const std::string& file) {
   if (file == "hopping.toml") return hopping_text;
   if (file == "background.toml") return background_text;
+  if (file == "ribbons.toml") return ribbon_text;
   return file == "contact.toml" ? contact_text : checks_text;
 }
 
 const std::vector<Broken> broken_texts = {
+    {"negative repulsion", "ribbons.toml", "= 2.0", "= -2.0", "'repulsion' is negative"},
+    {"missing repulsion", "ribbons.toml", "repulsion.unit", "# repulsion.unit",
+     "key 'unit' is missing"},
     {"unknown key", "hopping.toml", "title", "titel", "unknown key 'titel'"},
     {"extra key", "hopping.toml", "title", "colour = 1\ntitle", "unknown key 'colour'"},
     {"extra key of a value", "hopping.toml", "hopping.unit", "hopping.note = \"\"\nhopping.unit",

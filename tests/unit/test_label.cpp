@@ -2,6 +2,7 @@
 #include <gapwright/lattice/candidates.hpp>
 #include <gapwright/lattice/label.hpp>
 
+#include <cmath>
 #include <random>
 
 #include <catch2/catch.hpp>
@@ -118,7 +119,7 @@ TEST_CASE("everything else is refused with what is expected", "[label]") {
   using namespace std::string_literals;
   for (const std::string& label :
        {""s, " \t"s, "nanotube"s, "(10,10)(5,5)"s, "()"s, "("s, "@"s, "1e1,1"s, "(１０,１０)"s,
-        "\xff\xfe"s, "10,10\0"s, "13-AGNR"s, "wire:copper"s, std::string(100000, '9')}) {
+        "\xff\xfe"s, "10,10\0"s, "wire:copper"s, std::string(100000, '9')}) {
     const InputError::Parts parts = refusal(label);
     CHECK(holds(parts.expected, "(10,10)"));
     CHECK(holds(parts.expected, "graphene"));
@@ -126,9 +127,50 @@ TEST_CASE("everything else is refused with what is expected", "[label]") {
   }
   CHECK(refusal("graphen").nearest == "graphene");
   CHECK(refusal("Graphene").nearest == "graphene");
-  CHECK(holds(refusal("13-AGNR").what, "ribbon"));
   CHECK(holds(refusal("5,5@6-zgnr").what, "ribbon"));
   CHECK(holds(refusal("wire:copper").what, "wire"));
+}
+
+TEST_CASE("labels of ribbons", "[label]") {
+  CHECK(read("13-AGNR") == "13-AGNR");
+  CHECK(read(" 6-zgnr ") == "6-ZGNR");
+  CHECK(read("3-AGNR") == "3-AGNR");
+  CHECK(read("3000-ZGNR") == "3000-ZGNR");
+  CHECK(std::get<RibbonObject>(parse_label("7-AGNR").object).ribbon ==
+        make_ribbon(RibbonEdge::armchair, 7));
+  for (const char* label : {"13AGNR", "AGNR-13", "13 AGNR", "13-GNR", "+13-AGNR", "-13-AGNR"})
+    CHECK(refusal(label).nearest == "13-AGNR");
+  CHECK(refusal("2-AGNR").nearest == "3-AGNR");
+  CHECK(refusal("0-ZGNR").nearest == "2-ZGNR");
+  CHECK(refusal("99999999999999999999-ZGNR").nearest == "3000-ZGNR");
+  for (const char* label : {"AGNR", "13-5-AGNR", "-AGNR", "1.5-AGNR", "13-AGNRs"})
+    CHECK(holds(refusal(label).expected, "6-ZGNR"));
+  CHECK(holds(refusal("13-AGNR@10,10").what, "no wall"));
+}
+
+TEST_CASE("rows of ribbons fill the width", "[label]") {
+  for (const Ribbon& ribbon :
+       {make_ribbon(RibbonEdge::armchair, 7), make_ribbon(RibbonEdge::zigzag, 4)}) {
+    const auto rows = ribbon_rows(ribbon);
+    REQUIRE(int(rows.size()) == ribbon.rows());
+    for (std::size_t j = 0; j < rows.size(); ++j) {
+      const auto& mirror = rows[rows.size() - 1 - j];
+      CHECK(rows[j].y_nm == Approx(-mirror.y_nm).margin(1e-12));
+      CHECK(rows[j].strip_high_nm - rows[j].strip_low_nm == Approx(ribbon.strip_nm()));
+      if (j + 1 < rows.size())
+        CHECK(rows[j].strip_high_nm ==
+              Approx(0.5 * (rows[j].y_nm + rows[j + 1].y_nm)).margin(1e-12));
+      // A_at times the atoms of a row per nm (METHODS §1).
+      CHECK(ribbon.strip_nm() == Approx(std::sqrt(3.0) / 4 * 0.142 * 0.142 * 3 *
+                                        ribbon.atoms_per_row() / ribbon.period_nm()));
+    }
+    CHECK(row_conductances_per_nm(rows).size() == rows.size() - 1);
+  }
+  // Density of the sheet, 38.177 atoms/nm² (Saito, Dresselhaus & Dresselhaus 1998).
+  const Ribbon seven = make_ribbon(RibbonEdge::armchair, 7);
+  CHECK(seven.atoms_per_nm() / seven.width_nm() == Approx(38.177).epsilon(1e-5));
+  CHECK_THROWS_AS(make_ribbon(RibbonEdge::armchair, 2), std::domain_error);
+  CHECK_THROWS_AS(make_ribbon(RibbonEdge::zigzag, 3001), std::domain_error);
 }
 
 TEST_CASE("messages carry no control characters of the label", "[label]") {
