@@ -52,25 +52,25 @@ double sheet_conductivity_ratio(const CheckRow&, const Binder& binder) {
   const Nodes nodes = make_nodes(binder.settings().tolerance);
   const IndexRange xi{nodes.xi.index_above(0.02), 1};
   const double wave_per_nm = 1e-4;  // ħvQ far below ξ
-  const FlatResponse flat(hopping(binder), binder.settings().conditions, nodes, xi, wave_per_nm,
-                          10 * wave_per_nm);
+  // A limit of T = 0 without doping.
+  const FlatResponse flat(hopping(binder), {}, nodes, xi, wave_per_nm, 10 * wave_per_nm);
   std::vector<double> strength_nm(1);
   flat.strength_nm(wave_per_nm, strength_nm);
   return strength_nm[0] * nodes.xi.node(xi.first) / (constants::pi * constants::coulomb_eV_nm);
 }
 
-// -E·d³ of two sheets with π electrons alone, far apart (METHODS §5).
+// -E·d³ of two sheets with π electrons alone, far apart, T = 0 (METHODS §5).
 double flat_c3(const CheckRow&, const Binder& binder) {
   const double spacing_nm = 500;
-  Nodes nodes = make_nodes(binder.settings().tolerance);
+  const Nodes nodes = make_nodes(binder.settings().tolerance);
   IndexRange xi = contact_frequencies(nodes);
   const int lowest = nodes.xi.index_below(1e-3 / spacing_nm);
   xi = {lowest, xi.end() - lowest};
   const IndexRange waves = planar_waves(spacing_nm, spacing_nm, nodes);
-  const FlatResponse flat(hopping(binder), binder.settings().conditions, nodes, xi,
-                          nodes.q.node(waves.first), nodes.q.node(waves.end() - 1));
+  const FlatResponse flat(hopping(binder), {}, nodes, xi, nodes.q.node(waves.first),
+                          nodes.q.node(waves.end() - 1));
   const SheetScatterer sheet = carbon_sheet(flat, Background{}, nodes, waves);
-  const PlanarEnergy energy = planar_energy(sheet, sheet, spacing_nm, binder.settings().conditions);
+  const PlanarEnergy energy = planar_energy(sheet, sheet, spacing_nm, {});
   return -energy.energy_eV_per_nm2.value * std::pow(spacing_nm, 3);
 }
 

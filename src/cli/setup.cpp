@@ -75,19 +75,16 @@ Settings read_settings(const Words& words, const Catalogs& catalogs, Settings ba
   Conditions& conditions = settings.conditions;
   if (const auto kelvin = words.number("--temperature-K", {0, 3000, "K"})) {
     conditions.temperature_K = *kelvin;
-    at_option("--temperature-K", [&] {
-      Conditions undoped = conditions;
-      undoped.chemical_potential_eV = 0;
-      validate(undoped);
-    });
-  }
-  if (const auto doping = words.number("--chemical-potential-eV", {-10, 10, "eV"})) {
-    conditions.chemical_potential_eV = *doping;
-    at_option("--chemical-potential-eV", [&] { validate(conditions); });
+    at_option("--temperature-K", [&] { validate(conditions); });
   }
   conditions.retarded = conditions.retarded || words.flag("--retarded");
   if (const auto name = words.text("--hopping"))
     settings.hopping = at_option("--hopping", [&] { return catalogs.hopping(*name).name; });
+  if (const auto doping = words.number("--chemical-potential-eV", {-10, 10, "eV"})) {
+    conditions.chemical_potential_eV = *doping;
+    at_option("--chemical-potential-eV",
+              [&] { validate(conditions, catalogs.hopping(settings.hopping)); });
+  }
   if (const auto name = words.text("--background"))
     settings.background =
         at_option("--background", [&] { return catalogs.background(*name).name; });

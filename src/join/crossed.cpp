@@ -42,19 +42,21 @@ Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm
   // number, 0.6·share·q·D.
   const double lower = std::max(1.0, 3e-4 * share / (0.1 * nodes.tolerance));
   window.xi = frequencies_at(std::max(1.0, gap) * lower, nodes);
-  const LogLattice lattice = nodes_on(window.xi, nodes).q;
+  window.fine = far_apart(std::max(1.0, gap) * lower);
+  const LogLattice lattice = nodes_on(window, nodes).q;
   window.q.first = lattice.index_below(std::min(2e-3, 0.05 * nodes.tolerance / share) /
                                        std::max(1.0, distance_nm));
   window.q.count = lattice.index_above(limit / (2 * gap)) + 1 - window.q.first + 1;
   const double wider = std::max(radius_1_nm, radius_2_nm);
   const double far = distance_nm - std::min(radius_1_nm, radius_2_nm);
+  const int least = least_multipole(gap);
   int largest = 0;
   for (int j = 0; j < window.q.count; ++j) {
     // One node more than needed, so that nothing is extrapolated.
     const double q = lattice.node(window.q.first + std::max(0, j - 1));
     const int m = largest_multipole(q, wider, far, limit, largest);
     largest = j == 0 ? m : std::min(m, largest);
-    window.orders.push_back(largest + 1);
+    window.orders.push_back(std::max(largest, least) + 1);
   }
   return window;
 }

@@ -30,13 +30,15 @@ Window parallel_part(const Crossing& row, double distance_nm) {
   const double far = distance_nm - touch + wider;
   Window part;
   part.xi = row.window.xi;
+  part.fine = row.window.fine;
   const int end = nodes.q.index_above(limit / (2 * (distance_nm - touch))) + 1;
   part.q = {row.window.q.first, std::min(end, row.window.q.end()) - row.window.q.first};
+  const int least = least_multipole(distance_nm - touch);
   int largest = 0;
   for (int j = 0; j < part.q.count; ++j) {
     const int m = largest_multipole(nodes.q.node(part.q.first + j), wider, far, limit, largest);
     largest = std::min(j == 0 ? m : std::min(m, largest), row.window.orders[std::size_t(j)] - 1);
-    part.orders.push_back(largest + 1);
+    part.orders.push_back(std::max(largest, least) + 1);
   }
   return part;
 }
@@ -123,7 +125,7 @@ void interpolate(Values values, const CrossedDensity& here, const CrossedDensity
 }
 
 double total(const FrequencyDensity& density, const Crossing& row) {
-  return frequency_sum(density, row.first.nodes(), row.window.xi, {}).value;
+  return frequency_sum(density, row.first.nodes(), row.window.xi).value;
 }
 
 }  // namespace

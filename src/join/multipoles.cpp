@@ -1,5 +1,7 @@
 #include "multipoles.hpp"
 
+#include <gapwright/join/density.hpp>
+
 #include <cmath>
 
 namespace gapwright {
@@ -18,6 +20,10 @@ int largest_multipole(double q, double near_nm, double far_nm, double limit, int
   while (m > 0 && exponent(m) > limit) --m;
   while (exponent(m + 1) <= limit) ++m;
   return m;
+}
+
+int least_multipole(double gap_nm) {
+  return far_apart(gap_nm) ? 1 : 0;
 }
 
 }  // namespace gapwright

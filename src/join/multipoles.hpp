@@ -10,4 +10,8 @@ double multipole_exponent(int m, double x);
 /// e^{-limit}; searched from `start` downwards or upwards.
 int largest_multipole(double q, double near_nm, double far_nm, double limit, int start);
 
+/// The multipoles of every window of bodies this far apart: the transverse dipoles of gapped bodies
+/// fall as slowly as the axial ones, so that no exponent says when they end.
+int least_multipole(double gap_nm);
+
 }  // namespace gapwright

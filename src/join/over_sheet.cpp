@@ -90,17 +90,23 @@ Window over_sheet_window(double radius_nm, double gap_nm, const Nodes& nodes) {
   const double distance = radius_nm + gap_nm;
   Window window;
   window.xi = frequencies_at(gap_nm, nodes);
-  const LogLattice lattice = nodes_on(window.xi, nodes).q;
+  window.fine = far_apart(gap_nm);
+  const LogLattice lattice = nodes_on(window, nodes).q;
   // Below the lowest node the density is continued as a constant, an error of 8·share·(qD)².
   const double lowest = std::sqrt(0.004 * nodes.tolerance / charge_wave_share(gap_nm));
-  window.q.first = lattice.index_below(std::min(0.01, lowest) / distance);
+  double first = std::min(0.01, lowest) / distance;
+  if (nodes.warm())
+    first =
+        std::min(first, lowest_static_wave(distance, nodes.tolerance) / charge_wave_share(gap_nm));
+  window.q.first = lattice.index_below(first);
   window.q.count = lattice.index_above(limit / (2 * gap_nm)) - window.q.first + 1;
+  const int least = least_multipole(gap_nm);
   int largest = 0;
   for (int j = 0; j < window.q.count; ++j) {
     const double q = lattice.node(window.q.first + j);
     const int m = largest_multipole(q, radius_nm, distance, limit, largest);
     largest = j == 0 ? m : std::min(m, largest);
-    window.orders.push_back(largest + 1);
+    window.orders.push_back(std::max(largest, least) + 1);
   }
   return window;
 }

@@ -70,8 +70,7 @@ struct Coupled {
         nodes(first.nodes()),
         with_slope(slope),
         weights(trapezoid_weights(nodes.q, window.q, {})),
-        frequency_weights(
-            trapezoid_weights(nodes.xi, window.xi, {.constant_below = true, .power_above = 4.0})) {
+        importance(frequency_weights(nodes, window.xi)) {
     require(first, second);
     for (int j = 0; j < window.q.count; ++j) {
       const int orders = window.orders[std::size_t(j)];
@@ -98,7 +97,8 @@ struct Coupled {
   Window window;
   Nodes nodes;
   bool with_slope;
-  AxisWeights weights, frequency_weights;
+  AxisWeights weights;
+  std::vector<double> importance;                     // of the frequencies
   std::vector<std::vector<double>> scale_1, scale_2;  // of each wave number
   std::vector<MultipoleCoupling> waves;
 };
@@ -213,7 +213,7 @@ class Evaluation {
   /// equal part of what the frequency may lose.
   std::vector<double> allowed_loss() const {
     const double share = further_share * coupling_.nodes.tolerance;
-    const std::vector<double>& weight = coupling_.frequency_weights.full;
+    const std::vector<double>& weight = coupling_.importance;
     double energy = 0.0;
     for (std::size_t k = 0; k < weight.size(); ++k) energy += weight[k] * std::fabs(trace.full[k]);
     const double blocks = 2.0 * coupling_.window.q.count * both_signs;

@@ -19,6 +19,12 @@ constexpr double widest_step = 0.55;
 constexpr double squared_factor = 2.0;
 constexpr double rounding_floor = 1e-15;
 
+// Between the nodes of T > 0 the density is a cubic spline, whose error falls faster than step^4:
+// 1.5e-6 at 0.25.
+double spline_step(double tolerance) {
+  return 0.25 * std::min(1.0, std::pow(tolerance / 1e-5, 0.2));
+}
+
 IndexRange united(const IndexRange& a, const IndexRange& b) {
   if (a.count == 0) return b;
   if (b.count == 0) return a;
@@ -52,14 +58,16 @@ void add_weights(const LogLattice& lattice, const IndexRange& range, int first, 
 }  // namespace
 
 double LogLattice::node(int index) const {
-  return std::exp(index * step);
+  if (from_zero && index < 0) return 0.0;
+  return origin * std::exp(index * step);
 }
 
 int LogLattice::index_below(double x) const {
   if (!(x > 0) || !std::isfinite(x))
     throw std::domain_error(
         fmt::format("LogLattice::index_below: x = {}, required: 0 < x < infinity", x));
-  int index = static_cast<int>(std::floor(std::log(x) / step));
+  if (from_zero && x < origin) return -1;
+  int index = static_cast<int>(std::floor(std::log(x / origin) / step));
   while (node(index) > x) --index;
   while (node(index + 1) <= x) ++index;
   return index;
@@ -70,16 +78,22 @@ int LogLattice::index_above(double x) const {
   return node(below) == x ? below : below + 1;
 }
 
-Nodes make_nodes(double tolerance) {
+Nodes make_nodes(double tolerance, double first_matsubara_eV) {
   if (!(tolerance >= 1e-8 && tolerance <= 1e-2))
     throw std::domain_error(
         fmt::format("make_nodes: tolerance = {}, required: 1e-8 … 1e-2", tolerance));
   const double step =
       std::min(widest_step, trapezoid_decay / std::log(trapezoid_scale / tolerance));
-  return {.q = {step}, .xi = {step}, .tolerance = tolerance};
+  if (!(first_matsubara_eV >= 0) || !std::isfinite(first_matsubara_eV))
+    throw std::domain_error(
+        fmt::format("make_nodes: first_matsubara_eV = {}, required: >= 0", first_matsubara_eV));
+  Nodes nodes{.q = {step}, .xi = {step}, .tolerance = tolerance};
+  if (first_matsubara_eV > 0) nodes.xi = {spline_step(tolerance), first_matsubara_eV, true};
+  return nodes;
 }
 
 bool Window::covers(const Window& other) const {
+  if (fine != other.fine && other.q.count > 0) return false;
   if (!q.contains(other.q) || !xi.contains(other.xi)) return false;
   for (int j = 0; j < other.q.count; ++j)
     if (orders[other.q.first + j - q.first] < other.orders[j]) return false;
@@ -93,7 +107,12 @@ std::size_t Window::cells() const {
 }
 
 Window united(const Window& a, const Window& b) {
-  Window window{.q = united(a.q, b.q), .orders = {}, .xi = united(a.xi, b.xi)};
+  if (a.fine != b.fine && a.q.count > 0 && b.q.count > 0)
+    throw std::invalid_argument("united: the windows stand on different lattices");
+  Window window{.q = united(a.q, b.q),
+                .orders = {},
+                .xi = united(a.xi, b.xi),
+                .fine = a.q.count > 0 ? a.fine : b.fine};
   window.orders.assign(window.q.count, 0);
   raise_orders(window, a);
   raise_orders(window, b);

@@ -55,6 +55,7 @@ void bind_beside(const PairCurve& curve, std::optional<double> gap_nm, double to
   const Estimate share = curve.electronic_share(gap);
   row.axis_distance_nm = curve.touching_nm() + gap;
   row.dispersion_eV_per_nm = dispersion;
+  if (row.temperature_K > 0) row.thermal_share = point.static_part / dispersion;
   row.first_round_trip_eV_per_nm = point.first_round_trip;
   row.contact_eV_per_nm = contact_energy.value;
   row.energy_eV_per_nm = dispersion + contact_energy.value;

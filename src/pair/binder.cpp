@@ -23,6 +23,7 @@ namespace {
 Settings checked(const Catalogs& catalogs, Settings settings) {
   validate(settings.conditions);
   settings.hopping = catalogs.hopping(settings.hopping).name;
+  validate(settings.conditions, catalogs.hopping(settings.hopping));
   settings.background = catalogs.background(settings.background).name;
   settings.contact_target = catalogs.contact_target(settings.contact_target).name;
   if (!(settings.tolerance >= least_tolerance && settings.tolerance <= largest_tolerance))
@@ -93,15 +94,26 @@ struct Binder::Impl {
       : catalogs(all),
         settings(checked(all, wanted)),
         carbon{all.hopping(settings.hopping), all.background(settings.background),
-               settings.conditions, make_nodes(settings.tolerance)},
+               settings.conditions, make_nodes(settings.tolerance, settings.conditions)},
         cache(carbon),
-        contacts(catalogs, carbon, cache) {}
+        cold{carbon.hopping, carbon.background, {}, make_nodes(settings.tolerance)},
+        cold_cache(cold),
+        contacts(catalogs, cold, is_reference() ? cache : cold_cache),
+        warm_sheets(catalogs, carbon, cache) {}
+
+  /// T = 0, undoped: what the contact term is calibrated at.
+  bool is_reference() const {
+    return carbon.conditions.temperature_K == 0 && carbon.conditions.chemical_potential_eV == 0;
+  }
 
   Catalogs catalogs;
   Settings settings;
   Carbon carbon;
   TubeCache cache;
+  Carbon cold;
+  TubeCache cold_cache;
   ContactTerms contacts;
+  ContactTerms warm_sheets;  // for sheets at the conditions
 };
 
 Binder::Binder(const Catalogs& catalogs, const Settings& settings)
@@ -190,7 +202,7 @@ PairFunction Binder::contact_term(const std::string& contact_target) const {
 }
 
 PlanarEnergy Binder::sheets(double spacing_nm) const {
-  return impl_->contacts.sheets(spacing_nm);
+  return (impl_->is_reference() ? impl_->contacts : impl_->warm_sheets).sheets(spacing_nm);
 }
 
 std::string Binder::settings_key() const {

@@ -88,7 +88,7 @@ class WallChain {
                                     RetardedShell(*around, carbon_.background), window, with_slope);
   }
 
-  Estimate sum(const FrequencyDensity& density) const {
+  FrequencySum sum(const FrequencyDensity& density) const {
     return frequency_sum(density, carbon_.nodes, all_.xi, carbon_.conditions);
   }
 
@@ -194,7 +194,12 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
   else
     flat = chain.densities(0, last, Electrons::flat);
   std::vector<Estimate> energies;
-  for (const FrequencyDensity& density : own) energies.push_back(chain.sum(density));
+  double static_part = 0.0;
+  for (const FrequencyDensity& density : own) {
+    const FrequencySum sum = chain.sum(density);
+    energies.push_back(sum);
+    static_part += sum.static_part;
+  }
   const Estimate dispersion = total(energies);
   const Estimate contact_energy =
       contact.estimate([&](const PairFunction& pair) { return coaxial_contact(object, pair); });
@@ -203,6 +208,7 @@ void bind_coaxial(const TubeObject& object, const Carbon& carbon, TubeCache& cac
   const Estimate share = chain.electronic_share(own, flat);
 
   row.dispersion_eV_per_nm = dispersion.value;
+  if (carbon.nodes.warm()) row.thermal_share = static_part / dispersion.value;
   row.contact_eV_per_nm = contact_energy.value;
   row.energy_eV_per_nm = energy.value;
   row.energy_error = energy.error;

@@ -26,9 +26,7 @@ const SheetScatterer& ContactTerms::sheet_for(double spacing_nm) {
     return *near_;
   }
   if (!far_) {
-    IndexRange xi = contact_frequencies(carbon_.nodes);
-    const int lowest = carbon_.nodes.xi.index_below(1e-3 / farthest_nm);
-    xi = {lowest, xi.end() - lowest};
+    const IndexRange xi = frequencies_at(farthest_nm, carbon_.nodes);
     const IndexRange waves = planar_waves(near_limit_nm, farthest_nm, nodes);
     const FlatResponse flat(carbon_.hopping, carbon_.conditions, carbon_.nodes, xi,
                             nodes.q.node(waves.first), nodes.q.node(waves.end() - 1));

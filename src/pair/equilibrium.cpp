@@ -47,7 +47,7 @@ class Displacement {
     const Settings& settings = binder.settings();
     const HoppingSet& hopping = binder.catalogs().hopping(settings.hopping);
     normal_only_ = binder.catalogs().background(settings.background);
-    const Nodes nodes = make_nodes(settings.tolerance);
+    const Nodes nodes = make_nodes(settings.tolerance, conditions_);
     window_ = united(window_at(least_gap_nm, nodes), window_at(largest_gap_nm, nodes));
     const auto response = [&](const Tube& tube) {
       return with_background(tube_response(tube, hopping, conditions_, nodes, window_),

@@ -47,7 +47,9 @@ CurvePoint ParallelCurve::dispersion(double gap_nm, bool with_slope, RoundTrips 
     return frequency_sum(part, carbon_.nodes, here.xi, carbon_.conditions);
   };
   CurvePoint point;
-  point.energy = sum(result.own.energy);
+  const FrequencySum energy = sum(result.own.energy);
+  point.energy = energy;
+  point.static_part = energy.static_part;
   point.first_round_trip = sum(result.own.first_round_trip).value;
   point.positive = result.own.positive;
   if (with_slope) {

@@ -14,6 +14,7 @@ constexpr std::size_t response_bytes = std::size_t(600) << 20;
 // Waves of the cells of any tube: q down to that of a 20 nm wide tube; at the largest round-trip
 // exponent x of a gap of 0.2 nm or more, Q stays below about 4x.
 constexpr double widest_radius_nm = 10.0;
+constexpr double farthest_nm = 1e4;
 constexpr double flat_highest_per_exponent = 4.0;
 
 std::size_t bytes_of(const ShellResponse& response) {
@@ -22,15 +23,15 @@ std::size_t bytes_of(const ShellResponse& response) {
 
 }  // namespace
 
-TubeCache::Entry& TubeCache::entry(const Tube& tube, int xi_first) {
+TubeCache::Entry& TubeCache::entry(const Tube& tube, const Window& window) {
   const std::lock_guard lock(entries_mutex_);
-  auto& slot = entries_[{tube.chirality, xi_first}];
+  auto& slot = entries_[{tube.chirality, window.xi.first, window.fine}];
   if (!slot) slot = std::make_unique<Entry>();
   return *slot;
 }
 
 void TubeCache::announce(const Tube& tube, const Window& window) {
-  Entry& e = entry(tube, window.xi.first);
+  Entry& e = entry(tube, window);
   const std::lock_guard lock(e.mutex);
   e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
 }
@@ -42,7 +43,7 @@ void TubeCache::warm(const Tube& tube) {
 }
 
 std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const Window& window) {
-  Entry& e = entry(tube, window.xi.first);
+  Entry& e = entry(tube, window);
   const std::lock_guard lock(e.mutex);
   if (e.response && e.response->window().covers(window)) {
     note_use(e);
@@ -52,7 +53,7 @@ std::shared_ptr<const ShellResponse> TubeCache::response(const Tube& tube, const
     e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
   if (e.announced.q.count == 0) return nullptr;
   e.response = std::make_shared<const ShellResponse>(tube_response(
-      tube, carbon_.hopping, carbon_.conditions, nodes_on(window.xi, carbon_.nodes), e.announced));
+      tube, carbon_.hopping, carbon_.conditions, nodes_on(window, carbon_.nodes), e.announced));
   note_use(e);
   drop_oldest(e);
   return e.response;
@@ -98,13 +99,16 @@ TubeGaps TubeCache::gaps(const Tube& tube) {
 const FlatResponse& TubeCache::flat(IndexRange xi) {
   const std::lock_guard lock(flat_mutex_);
   auto& flat = flat_[xi.first];
-  // Ranges towards small frequencies are those of far bodies, whose waves are as much longer.
+  // Ranges towards small frequencies are those of far bodies, whose waves are as much longer. At
+  // T > 0 all rows share one range.
   const Nodes& nodes = carbon_.nodes;
-  const double reach = nodes.xi.node(xi.first) / nodes.xi.node(contact_frequencies(nodes).first);
+  const double contact = 0.5 * lowest_wave(widest_radius_nm, nodes.tolerance);
+  const double lowest = nodes.warm() ? 0.5 * lowest_static_wave(farthest_nm, nodes.tolerance)
+                                     : contact * nodes.xi.node(xi.first) /
+                                           nodes.xi.node(contact_frequencies(nodes).first);
   if (!flat)
     flat = std::make_unique<FlatResponse>(
-        carbon_.hopping, carbon_.conditions, carbon_.nodes, xi,
-        0.5 * lowest_wave(widest_radius_nm, carbon_.nodes.tolerance) * reach,
+        carbon_.hopping, carbon_.conditions, carbon_.nodes, xi, lowest,
         flat_highest_per_exponent * largest_exponent(carbon_.nodes.tolerance));
   return *flat;
 }
@@ -137,7 +141,7 @@ void TubeCache::keep(const Key& key, std::shared_ptr<const Scatterer> scatterer)
 
 std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel channel,
                                                       Electrons electrons, const Window& window) {
-  const Key key{{tube.chirality, window.xi.first}, channel, electrons};
+  const Key key{{tube.chirality, window.xi.first, window.fine}, channel, electrons};
   if (auto found = kept(key, window)) return found;
   const auto response = shell(tube, electrons, window);
   const auto made = std::make_shared<const Scatterer>(

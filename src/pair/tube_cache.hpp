@@ -57,15 +57,16 @@ class TubeCache {
     std::size_t bytes = 0;                             // of the response; guarded by used_mutex_,
     std::optional<std::list<Entry*>::iterator> place;  // as is its place among used_
   };
-  // Rows of one frequency range share responses; the range's first index stands for it.
-  using EntryKey = std::pair<Chirality, int>;
+  // Rows of one frequency range and one lattice of wave numbers share responses; the range's first
+  // index stands for it.
+  using EntryKey = std::tuple<Chirality, int, bool>;
   using Key = std::tuple<EntryKey, Channel, Electrons>;
   struct Kept {
     Key key;
     std::shared_ptr<const Scatterer> scatterer;
   };
 
-  Entry& entry(const Tube& tube, int xi_first);
+  Entry& entry(const Tube& tube, const Window& window);
   std::shared_ptr<const ShellResponse> response(const Tube& tube, const Window& window);
   void note_use(Entry& e);
   void drop_oldest(const Entry& keep);

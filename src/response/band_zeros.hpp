@@ -10,10 +10,15 @@
 namespace gapwright {
 
 /// A zero of F seen from a line: at axial position z and distance from the real axis. The band
-/// energy |F| has branch points at z ± i·distance.
+/// energy |F| has branch points at z ± i·distance. With a length: Fermi poles anywhere from z to
+/// z + length. With a slope: a band crosses the chemical potential at T = 0.
 struct BranchPoint {
   double z = 0.0;
   double distance = 0.0;
+  double length = 0.0;
+  double slope = 0.0;  // of the band energy there [eV nm]
+
+  double end() const { return z + length; }
 };
 
 /// The zeros of the nearest-neighbour F(k_c, z) in complex z, followed from a Dirac point as the

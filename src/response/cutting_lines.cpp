@@ -29,6 +29,15 @@ double longest_half(double ahead, double distance, const Ellipse& e) {
   return (-b + std::sqrt(b * b + curvature * c)) / curvature;
 }
 
+/// The same for points everywhere from `ahead` to `ahead` + length.
+double longest_half(double ahead, double length, double distance, const Ellipse& e) {
+  const double beside = distance / e.minor;  // where the points go on
+  const double end = ahead + length;
+  if (end <= 0) return longest_half(end, distance, e);
+  if (ahead >= 0) return std::max(beside, std::min(longest_half(ahead, distance, e), ahead));
+  return beside < end ? beside : longest_half(end, distance, e);
+}
+
 void append_gauss(double from, double to, const GaussRule& gauss, LineNodes& out) {
   const double centre = 0.5 * (from + to), half = 0.5 * (to - from);
   const std::size_t at = out.z.size(), count = gauss.nodes.size();
@@ -75,13 +84,17 @@ void append_panels(double from, double to, std::span<const BranchPoint> points,
   std::size_t lowest = 0;
   double left = from;
   while (left < to) {
-    while (lowest < points.size() && points[lowest].z < left - behind) ++lowest;
+    while (lowest < points.size() && points[lowest].end() < left - behind) ++lowest;
     double half = rule.longest;
     double stop = to;
     for (std::size_t i = lowest; i < points.size(); ++i) {
       const double ahead = points[i].z - left;
       if (ahead > (1 + ellipse.major) * half) break;
       const double distance = points[i].distance;
+      if (points[i].length > 0) {
+        half = std::min(half, longest_half(ahead, points[i].length, distance, ellipse));
+        continue;
+      }
       if (distance < on_line) {
         // On the line the functions are smooth on either side: cut there, nothing else.
         if (ahead > on_line && points[i].z < stop) stop = points[i].z;
@@ -132,6 +145,15 @@ std::vector<BranchPoint> HelicalLines::branch_points(int line, int shift_order) 
   return points;
 }
 
+HelicalLines::Moved HelicalLines::moved(int line) const {
+  const int base = modulo(line, symmetry_);
+  return {base, (line - base) / symmetry_ * helix_step_};
+}
+
+double HelicalLines::into_period(double z) const {
+  return wrapped(z, period_);
+}
+
 int HelicalLines::image(int line, int order) const {
   return modulo(-line - order, symmetry_);
 }
@@ -144,12 +166,13 @@ void unroll(std::span<const BranchPoint> points, double period, double shift, do
             double to, double margin, std::vector<BranchPoint>& out) {
   out.clear();
   if (points.empty()) return;
-  const int first = int(std::floor((from - margin - shift) / period));
+  const int first = int(std::floor((from - margin - shift) / period)) - 1;
   const int last = int(std::floor((to + margin - shift) / period));
   for (int turn = first; turn <= last; ++turn)
     for (const BranchPoint& p : points) {
       const double z = p.z + shift + turn * period;
-      if (z >= from - margin && z <= to + margin) out.push_back({z, p.distance});
+      if (z + p.length >= from - margin && z <= to + margin)
+        out.push_back({z, p.distance, p.length, p.slope});
     }
 }
 

@@ -45,6 +45,14 @@ class HelicalLines {
   /// Zeros of F(k + (shift_order/R, 0)) within reach of the line, z in [0, period), rising.
   std::vector<BranchPoint> branch_points(int line, int shift_order) const;
 
+  /// A line beyond the first count() ones is one of them, moved along z.
+  struct Moved {
+    int line;
+    double shift;
+  };
+  Moved moved(int line) const;
+  double into_period(double z) const;
+
   /// The line that k → -k - Q maps `line` on, Q = (order/R, q), and for a line mapped on itself the
   /// sum z + z' of a point and its image at q = 0.
   int image(int line, int order) const;

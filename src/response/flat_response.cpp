@@ -6,6 +6,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <deque>
 #include <stdexcept>
 
 namespace gapwright {
@@ -25,7 +26,7 @@ FlatResponse::FlatResponse(const HoppingSet& hopping, const Conditions& conditio
                            const Nodes& nodes, IndexRange xi, double wave_min_per_nm,
                            double wave_max_per_nm)
     : xi_(xi), wave_min_(wave_min_per_nm), wave_max_(wave_max_per_nm) {
-  validate(conditions);
+  validate(conditions, hopping);
   if (!(wave_min_per_nm > 0) || !(wave_max_per_nm > wave_min_per_nm))
     throw std::domain_error("FlatResponse: waves must rise from a positive value");
   // Grid points are multiples of the step, so that values do not depend on the range asked for.
@@ -36,11 +37,11 @@ FlatResponse::FlatResponse(const HoppingSet& hopping, const Conditions& conditio
   std::vector<double> frequencies;
   for (int k = 0; k < xi.count; ++k) frequencies.push_back(nodes.xi.node(xi.first + k));
 
-  std::vector<std::vector<FlatDirection>> fans(5);
+  std::vector<std::deque<FlatDirection>> fans(5);
   for (const int n : {1, 2, 4})
     for (int i = 0; i < n; ++i)
-      fans[std::size_t(n)].emplace_back(hopping, (i + 0.5) / n * constants::pi / 6, nodes.tolerance,
-                                        frequencies);
+      fans[std::size_t(n)].emplace_back(hopping, conditions, (i + 0.5) / n * constants::pi / 6,
+                                        nodes.tolerance, frequencies);
 
   std::vector<double> logs(std::size_t(count) * std::size_t(xi.count), 0.0);
 #pragma omp parallel num_threads(inner_threads())

@@ -1,7 +1,9 @@
 // Compiled once per instruction set with GAPWRIGHT_KERNEL naming the namespace.
 #include "line_kernel.hpp"
 
+#include <bit>
 #include <cmath>
+#include <cstdint>
 
 namespace gapwright::GAPWRIGHT_KERNEL {
 namespace {
@@ -42,9 +44,10 @@ inline void sincos_turns(double turns, double& sine, double& cosine) {
   cosine = sign * (odd != 0.0 ? -s : c);
 }
 
-template <bool full>
-void transitions(const LineBonds& bonds, const double* __restrict z, const double* __restrict w,
-                 int count, double* __restrict strength, double* __restrict energy2) {
+template <bool full, bool with_levels>
+inline void nodes_of_line(const LineBonds& bonds, const double* __restrict z,
+                          const double* __restrict w, int count, double* __restrict strength,
+                          double* __restrict energy2, double* __restrict levels) {
   const double t0 = bonds.hopping[0], t1 = bonds.hopping[1], t2 = bonds.hopping[2];
   const double a0 = bonds.turns[0], a1 = bonds.turns[1];
   const double b0 = bonds.turns_per_z[0], b1 = bonds.turns_per_z[1];
@@ -74,7 +77,73 @@ void transitions(const LineBonds& bonds, const double* __restrict z, const doubl
                            ((small ? product + scalar : 1.0) * (2 * product));
     strength[i] = w[i] * overlap * sum;
     energy2[i] = sum * sum;
+    if constexpr (with_levels) {
+      levels[i] = f;
+      levels[count + i] = g;
+      levels[2 * count + i] = -((fx + gx) * dx + (fy + gy) * dy) / sum;
+      levels[3 * count + i] = overlap;
+    }
   }
+}
+
+template <bool full>
+void transitions(const LineBonds& bonds, const double* z, const double* w, int count,
+                 double* strength, double* energy2) {
+  nodes_of_line<full, false>(bonds, z, w, count, strength, energy2, nullptr);
+}
+
+template <bool full>
+void levels(const LineBonds& bonds, const double* z, const double* w, int count, double* strength,
+            double* energy2, double* level_values) {
+  nodes_of_line<full, true>(bonds, z, w, count, strength, energy2, level_values);
+}
+
+/// e^x to 1e-15, x cut to ±700.
+inline double exponential(double x) {
+  constexpr double round_constant = 6755399441055744.0;  // 1.5·2^52
+  constexpr double per_bit = 1.4426950408889634;
+  constexpr double bit_high = 0.693147180369123816490, bit_low = 1.90821492927058770002e-10;
+  x = x < -700.0 ? -700.0 : x;
+  x = x > 700.0 ? 700.0 : x;
+  const double shifted = x * per_bit + round_constant;
+  const double bits = shifted - round_constant;
+  const double r = (x - bits * bit_high) - bits * bit_low;
+  double p = 1.0 / 479001600.0;
+  p = 1.0 / 3628800 + r * (1.0 / 39916800 + r * p);
+  p = 1.0 / 40320 + r * (1.0 / 362880 + r * p);
+  p = 1.0 / 720 + r * (1.0 / 5040 + r * p);
+  p = 1.0 / 24 + r * (1.0 / 120 + r * p);
+  p = 1 + r * (1 + r * (0.5 + r * (1.0 / 6 + r * p)));
+  const auto exponent = (std::bit_cast<std::uint64_t>(shifted) + 1023) << 52;
+  return p * std::bit_cast<double>(exponent);
+}
+
+template <bool doped>
+void fermi_factors(const double* __restrict f, const double* __restrict g,
+                   const double* __restrict change, int count, double mu, double kT,
+                   double* __restrict across, double* __restrict within) {
+  const double beta = 1 / kT;
+#pragma GCC ivdep
+  for (int i = 0; i < count; ++i) {
+    const double low = f[i] < g[i] ? f[i] : g[i], high = f[i] < g[i] ? g[i] : f[i];
+    const double n_low = 1 / (1 + exponential((low - mu) * beta));
+    const double n_high = 1 / (1 + exponential((high - mu) * beta));
+    const double p_low = doped ? 1 / (1 + exponential((low + mu) * beta)) : n_low;
+    const double p_high = doped ? 1 / (1 + exponential((high + mu) * beta)) : n_high;
+    const double x = std::fabs(change[i]) * beta;
+    const double series =
+        1 - x * (0.5 - x * (1.0 / 6 - x * (1.0 / 24 - x * (1.0 / 120 - x * (1.0 / 720)))));
+    const double direct = (1 - exponential(-x)) / (x < 0.05 ? 1.0 : x);
+    const double share = x < 0.05 ? series : direct;
+    across[i] = 1 - 0.5 * (n_low + n_high + p_low + p_high);
+    within[i] = (n_low * (1 - n_high) + p_low * (1 - p_high)) * share * beta;
+  }
+}
+
+void factors(const double* f, const double* g, const double* change, int count, double mu,
+             double kT, double* across, double* within) {
+  (mu == 0 ? fermi_factors<false> : fermi_factors<true>)(f, g, change, count, mu, kT, across,
+                                                         within);
 }
 
 template <typename Real>
@@ -138,7 +207,8 @@ void accumulate(const double* strength, const double* energy2, int count, const 
 }  // namespace
 
 extern const LineKernel line_kernel;
-const LineKernel line_kernel{transitions<false>, transitions<true>, accumulate<float>,
+const LineKernel line_kernel{transitions<false>, transitions<true>, levels<false>,
+                             levels<true>,       factors,           accumulate<float>,
                              accumulate<double>};
 
 }  // namespace gapwright::GAPWRIGHT_KERNEL

@@ -30,6 +30,16 @@ struct LineKernel {
   /// The same with phases to rounding.
   void (*transitions_double)(const LineBonds& bonds, const double* z, const double* w, int count,
                              double* strength, double* energy2);
+  /// The same, and what Fermi factors need besides: four arrays of `count`, one after the other,
+  /// |F(k)|, |F(k + Q)|, their difference without cancellation, W.
+  void (*levels_single)(const LineBonds& bonds, const double* z, const double* w, int count,
+                        double* strength, double* energy2, double* levels);
+  void (*levels_double)(const LineBonds& bonds, const double* z, const double* w, int count,
+                        double* strength, double* energy2, double* levels);
+  /// Fermi factors of nodes with bands ±f and ±g, f - g = change, at kT > 0 and mu >= 0 (METHODS
+  /// (3.8)): across = ½[h(f) + h(g)], within = [h(f) - h(g)]/(f - g), to 1e-11.
+  void (*factors)(const double* f, const double* g, const double* change, int count, double mu,
+                  double kT, double* across, double* within);
   /// sum[x] += Σ_i strength[i]/(energy2[i] + xi2[x]), single precision in blocks of 32 nodes.
   void (*accumulate_single)(const double* strength, const double* energy2, int count,
                             const double* xi2, int frequencies, double* sum);

@@ -1,4 +1,5 @@
 #include "cutting_lines.hpp"
+#include "fermi_lines.hpp"
 #include "line_integral.hpp"
 
 #include <gapwright/catalog/constants.hpp>
@@ -36,17 +37,20 @@ namespace {
 /// The integrals of one tube over its helical lines.
 class TubeSum {
  public:
-  TubeSum(const Tube& tube, const HoppingSet& hopping, double tolerance, std::span<const double> xi)
+  TubeSum(const Tube& tube, const HoppingSet& hopping, const Conditions& conditions,
+          double tolerance, std::span<const double> xi)
       : radius_(tube.radius_nm),
         hamiltonian_(tube_hamiltonian(tube, hopping)),
         precision_(line_precision(tolerance, hamiltonian_.nearest_neighbour_only())),
         lines_(tube, hamiltonian_, precision_.panels.longest),
+        filling_{Occupation(conditions), Occupation(conditions).trivial()},
         xi_(xi) {
     for (int line = 0; line < lines_.count(); ++line)
       initial_.push_back(lines_.branch_points(line, 0));
+    if (!filling_.trivial) find_fermi_points();
   }
 
-  LineIntegrator integrator() const { return {hamiltonian_, precision_, xi_}; }
+  LineIntegrator integrator() const { return {hamiltonian_, precision_, filling_, xi_}; }
 
   /// What all wave numbers of one signed order share.
   struct Order {
@@ -65,7 +69,7 @@ class TubeSum {
       const int image = lines_.image(line, order);
       if (image < line) continue;  // time reversal: its image stands for it
       prepared.lines.push_back(
-          {line, image != line, lines_.mirror_sum(line, order), lines_.branch_points(line, order)});
+          {line, image != line, lines_.mirror_sum(line, order), final_points(line, order)});
     }
     return prepared;
   }
@@ -94,6 +98,8 @@ class TubeSum {
       std::merge(scratch.initial.begin(), scratch.initial.end(), scratch.shifted.begin(),
                  scratch.shifted.end(), scratch.points.begin(),
                  [](const BranchPoint& a, const BranchPoint& b) { return a.z < b.z; });
+      if (!filling_.trivial && filling_.occupation.kT() == 0)
+        add_resonances(scratch.initial, scratch.shifted, least_xi(), scratch.points);
       scratch.nodes.clear();
       append_panels(from, to, scratch.points, precision_.panels, scratch.nodes);
       integrator.add({line.index / radius_, 0.0}, {order.order / radius_, q}, scratch.nodes,
@@ -102,10 +108,43 @@ class TubeSum {
   }
 
  private:
+  double least_xi() const { return xi_.empty() ? 0.0 : *std::min_element(xi_.begin(), xi_.end()); }
+
+  void find_fermi_points() {
+    const FermiLines fermi(hamiltonian_, filling_.occupation);
+    const double kT = filling_.occupation.kT();
+    if (kT > 0) {
+      double nearest = 1e3;
+      for (int line = 0; line < lines_.count(); ++line)
+        nearest = fermi.nearest(line / radius_, 0.0, lines_.period(), nearest);
+      filling_.nearest = nearest;
+      // No state to excite or to block within a band, to rounding.
+      constexpr double frozen = 40.0;
+      filling_.trivial = nearest > frozen * kT;
+      if (filling_.trivial) return;
+    }
+    for (int line = 0; line < lines_.count(); ++line) {
+      std::vector<BranchPoint>& points = initial_[std::size_t(line)];
+      points = with_fermi_points(
+          points, fermi.along(line / radius_, 0.0, lines_.period(), filling_.nearest));
+    }
+  }
+
+  std::vector<BranchPoint> final_points(int line, int order) const {
+    if (filling_.trivial) return lines_.branch_points(line, order);
+    const HelicalLines::Moved moved = lines_.moved(line + order);
+    std::vector<BranchPoint> points = initial_[std::size_t(moved.line)];
+    for (BranchPoint& point : points) point.z = lines_.into_period(point.z + moved.shift);
+    std::sort(points.begin(), points.end(),
+              [](const BranchPoint& a, const BranchPoint& b) { return a.z < b.z; });
+    return points;
+  }
+
   double radius_;
   SheetHamiltonian hamiltonian_;
   LinePrecision precision_;
   HelicalLines lines_;
+  Filling filling_;
   std::span<const double> xi_;
   std::vector<std::vector<BranchPoint>> initial_;
 };
@@ -115,12 +154,12 @@ class TubeSum {
 ShellResponse tube_response(const Tube& tube, const HoppingSet& hopping,
                             const Conditions& conditions, const Nodes& nodes,
                             const Window& window) {
-  validate(conditions);
+  validate(conditions, hopping);
   std::vector<double> xi;
   for (int k = 0; k < window.xi.count; ++k) xi.push_back(nodes.xi.node(window.xi.first + k));
 
   ShellResponse response(tube.radius_nm, nodes, window);
-  const TubeSum sum(tube, hopping, nodes.tolerance, xi);
+  const TubeSum sum(tube, hopping, conditions, nodes.tolerance, xi);
   // Both signs of an order; one is enough where the tube is its own mirror image.
   const bool chiral = tube.shape == TubeKind::chiral;
 #pragma omp parallel num_threads(inner_threads())

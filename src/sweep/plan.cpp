@@ -74,10 +74,11 @@ void read_settings(const TomlReader& reader, const Catalogs& catalogs, Settings&
   conditions.temperature_K = reader.optional_number("temperature_K", {0, 3000, "K"}).value_or(0.0);
   conditions.chemical_potential_eV =
       reader.optional_number("chemical_potential_eV", {-10, 10, "eV"}).value_or(0.0);
-  at_key(reader, conditions.temperature_K != 0 ? "temperature_K" : "chemical_potential_eV",
-         [&] { validate(conditions); });
+  at_key(reader, "temperature_K", [&] { validate(conditions); });
   settings.hopping =
       reader.optional_word("hopping", names_of(catalogs.hopping_sets())).value_or("");
+  at_key(reader, "chemical_potential_eV",
+         [&] { validate(conditions, catalogs.hopping(settings.hopping)); });
   settings.background =
       reader.optional_word("background", names_of(catalogs.backgrounds())).value_or("");
   settings.contact_target =

@@ -29,7 +29,7 @@ Body body(int n, int m, const Nodes& nodes, const Window& window) {
   const Catalogs& catalogs = Catalogs::built_in();
   const Tube tube = make_tube({n, m});
   const ShellResponse response =
-      tube_response(tube, catalogs.hopping(), {}, nodes_on(window.xi, nodes), window);
+      tube_response(tube, catalogs.hopping(), {}, nodes_on(window, nodes), window);
   return {tube, shell_scatterer(Channel::outward, response, catalogs.background(), window)};
 }
 
@@ -138,7 +138,7 @@ TEST_CASE("the first round trip equals an integral in polar coordinates") {
       const Nodes nodes = make_nodes(tolerance);
       Window window = crossed_window(a.radius, b.radius, distance, nodes);
       window.xi.count = 1;
-      const Nodes own = nodes_on(window.xi, nodes);
+      const Nodes own = nodes_on(window, nodes);
       const Scatterer first = a.scatterer(own, window), second = b.scatterer(own, window);
       for (const double degrees : {90.0, 61.0, 20.0, 4.0, 1.0}) {
         const CrossedDensity density =
@@ -157,7 +157,7 @@ TEST_CASE("further round trips equal a dense determinant") {
   const Nodes nodes = make_nodes(1e-5);
   Window window = crossed_window(a.radius, b.radius, distance, nodes);
   window.xi.count = 1;
-  const Nodes own = nodes_on(window.xi, nodes);
+  const Nodes own = nodes_on(window, nodes);
   const Scatterer first = a.scatterer(own, window), second = b.scatterer(own, window);
   for (const double degrees : {90.0, 65.0}) {
     const CrossedDensity trip = crossed_density(first, second, distance, degrees, window, false);

@@ -210,7 +210,7 @@ TEST_CASE("crossed tubes in water tend to parallel ones over their lateral offse
   const Window window = crossed_window(tube.radius_nm, tube.radius_nm, distance, nodes);
   const Scatterer body = liquid_shell_scatterer(
       Channel::outward,
-      tube_response(tube, catalogs.hopping(), {}, nodes_on(window.xi, nodes), window),
+      tube_response(tube, catalogs.hopping(), {}, nodes_on(window, nodes), window),
       catalogs.background(), catalogs.medium("water"), window);
   bool negative = false, positive = false;
   for (int j = 0; j < window.q.count; ++j)

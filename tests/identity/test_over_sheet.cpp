@@ -137,7 +137,7 @@ TEST_CASE("a dense row of tubes is a sheet") {
   const double distance = 2.6;
   Nodes nodes = make_nodes(1e-5);
   const Window window = parallel_window(tube.radius_nm, other.radius_nm, distance, nodes);
-  nodes = nodes_on(window.xi, nodes);
+  nodes = nodes_on(window, nodes);
   const Scatterer body = tube_scatterer(tube, nodes, window);
   const Scatterer member = tube_scatterer(other, nodes, window);
   double last = 10.0;

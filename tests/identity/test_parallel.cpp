@@ -63,7 +63,7 @@ TEST_CASE("multipoles left out of further round trips are below 0.03 of the tole
       const double distance = a.radius_nm + b.radius_nm + gap;
       const Window window =
           parallel_window(a.radius_nm, b.radius_nm, distance, make_nodes(tolerance));
-      const Nodes nodes = nodes_on(window.xi, make_nodes(tolerance));
+      const Nodes nodes = nodes_on(window, make_nodes(tolerance));
       const auto scatterer = [&](const Tube& tube) {
         return shell_scatterer(Channel::outward,
                                tube_response(tube, catalogs.hopping(), {}, nodes, window),
@@ -103,7 +103,7 @@ TEST_CASE("the distance slope is the derivative of the energy") {
   for (const double gap : {0.25, 0.34, 1.0, 20.0}) {
     const double distance = a.radius_nm + b.radius_nm + gap, step = 1e-4 * gap;
     const Window window = parallel_window(a.radius_nm, b.radius_nm, distance, make_nodes(1e-4));
-    const Nodes nodes = nodes_on(window.xi, make_nodes(1e-4));
+    const Nodes nodes = nodes_on(window, make_nodes(1e-4));
     const auto scatterer = [&](const Tube& tube) {
       return shell_scatterer(Channel::outward,
                              tube_response(tube, catalogs.hopping(), {}, nodes, window),

@@ -41,7 +41,7 @@ TEST_CASE("perfect cylinders in the static limit") {
                        {100.0, -8.97311e-5}}) {
     Nodes nodes = make_nodes(1e-6);
     Window window = parallel_window(1.0, 1.0, r.distance, nodes);
-    nodes = nodes_on(window.xi, nodes);
+    nodes = nodes_on(window, nodes);
     // The density falls only as a double logarithm towards small q.
     const int lowest = nodes.q.index_below(1e-7 / r.distance);
     const int more = window.q.first - lowest;

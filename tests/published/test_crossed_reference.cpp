@@ -24,7 +24,7 @@ struct Crossed {
         window(crossed_window(tube.radius_nm, tube.radius_nm, distance, nodes)),
         body(shell_scatterer(Channel::outward,
                              tube_response(tube, Catalogs::built_in().hopping(), {},
-                                           nodes_on(window.xi, nodes), window),
+                                           nodes_on(window, nodes), window),
                              Catalogs::built_in().background(), window)) {}
 
   Estimate sum(const FrequencyDensity& density) const {
@@ -52,7 +52,7 @@ struct OverGraphene {
     const Tube tube = make_tube(kind);
     const Scatterer body = shell_scatterer(
         Channel::outward,
-        tube_response(tube, catalogs.hopping(), {}, nodes_on(window.xi, nodes), window),
+        tube_response(tube, catalogs.hopping(), {}, nodes_on(window, nodes), window),
         catalogs.background(), window);
     const double highest = 1.01 * largest_exponent(tolerance) / (2 * gap);
     const CarbonReflector sheet(

@@ -64,9 +64,10 @@ class Binder {
   /// Energy of the contact term of a row under another target: rank_spread needs no dispersion.
   double contact_eV_per_nm(const Placement& placement, const std::string& contact_target) const;
 
-  /// The calibrated short-range term of a target (computed once).
+  /// The short-range term of a target, calibrated at T = 0 without doping whatever the conditions
+  /// (computed once).
   PairFunction contact_term(const std::string& contact_target) const;
-  /// Two flat sheets of the model.
+  /// Two flat sheets of the model at the conditions.
   PlanarEnergy sheets(double spacing_nm) const;
 
   /// Hash of everything a row of this binder depends on besides its bodies: conditions, catalogue

@@ -16,6 +16,7 @@ struct CurvePoint {
   Estimate slope;                 ///< by the gap; zero unless asked for
   double first_round_trip = 0.0;  ///< the share of the first round trip in `energy`
   double first_slope = 0.0;       ///< its derivative; zero unless asked for
+  double static_part = 0.0;       ///< the n = 0 part of `energy`; zero at T = 0
   bool positive = true;           ///< false: a determinant was not positive, the bodies too close
 };
 
