@@ -162,6 +162,7 @@ ParsedLabel parse_label(std::string_view label) {
 std::string label_of(const Object& object) {
   if (std::holds_alternative<SheetObject>(object)) return "graphene";
   if (const auto* ribbon = std::get_if<RibbonObject>(&object)) return ribbon->ribbon.label();
+  if (const HalfSpaceObject* below = std::get_if<HalfSpaceObject>(&object)) return below->medium;
   std::string text;
   for (const Tube& wall : std::get<TubeObject>(object).walls)
     text += (text.empty() ? "" : "@") + wall.label();

@@ -1,6 +1,9 @@
 #include "beside_row.hpp"
 #include "coaxial_row.hpp"
 #include "contact_terms.hpp"
+#include "crossed_curve.hpp"
+#include "fit.hpp"
+#include "over_curve.hpp"
 #include "parallel_curve.hpp"
 #include "tube_cache.hpp"
 
@@ -22,6 +25,7 @@ namespace {
 
 Settings checked(const Catalogs& catalogs, Settings settings) {
   validate(settings.conditions);
+  settings.conditions.medium = liquid_of(catalogs, settings.conditions.medium).name;
   settings.hopping = catalogs.hopping(settings.hopping).name;
   validate(settings.conditions, catalogs.hopping(settings.hopping));
   settings.background = catalogs.background(settings.background).name;
@@ -35,54 +39,6 @@ Settings checked(const Catalogs& catalogs, Settings settings) {
   return settings;
 }
 
-/// Throws InputError unless the bodies fit the arrangement.
-void check(const Placement& placement) {
-  const TubeObject& first = tubes_of(placement.first);
-  if (placement.arrangement == Arrangement::coaxial) {
-    if (first.walls.size() < 2)
-      throw InputError({.what = label_of(first) + " has one wall",
-                        .where = {},
-                        .excerpt = {},
-                        .expected = "two or more coaxial walls, inner@outer",
-                        .nearest = {}});
-    return;
-  }
-  if (!placement.second)
-    throw InputError({.what = label_of(first) + " has nothing beside it",
-                      .where = {},
-                      .excerpt = {},
-                      .expected = "two objects",
-                      .nearest = {}});
-  if (placement.arrangement != Arrangement::parallel)
-    throw InputError({.what = arrangement_word(placement.arrangement) + " is not computed yet",
-                      .where = "arrangement",
-                      .excerpt = {},
-                      .expected = "coaxial or parallel",
-                      .nearest = {}});
-  tubes_of(*placement.second);
-  if (placement.gap_nm &&
-      !(*placement.gap_nm >= min_gap_nm && *placement.gap_nm <= farthest_gap_nm))
-    throw InputError({.what = fmt::format("a gap of {} nm is out of range", *placement.gap_nm),
-                      .where = "gap_nm",
-                      .excerpt = {},
-                      .expected = fmt::format("{} to {} nm", min_gap_nm, farthest_gap_nm),
-                      .nearest = *placement.gap_nm > farthest_gap_nm ? "10000" : "0.2"});
-}
-
-/// Throws InputError for a row that retardation is not computed for.
-void check_retarded(const Conditions& conditions, const Placement& placement) {
-  if (!conditions.retarded) return;
-  const bool coaxial = placement.arrangement == Arrangement::coaxial;
-  if (coaxial && tubes_of(placement.first).walls.size() == 2) return;
-  throw InputError({.what = "retardation is not computed for " +
-                            (coaxial ? std::string("more than two walls")
-                                     : arrangement_word(placement.arrangement) + " bodies"),
-                    .where = "retarded",
-                    .excerpt = {},
-                    .expected = "two coaxial walls, inner@outer",
-                    .nearest = {}});
-}
-
 std::string kind_of(const Tube& tube) {
   return tube.metallic() ? "metallic" : "semiconducting";
 }
@@ -94,7 +50,8 @@ struct Binder::Impl {
       : catalogs(all),
         settings(checked(all, wanted)),
         carbon{all.hopping(settings.hopping), all.background(settings.background),
-               settings.conditions, make_nodes(settings.tolerance, settings.conditions)},
+               settings.conditions, make_nodes(settings.tolerance, settings.conditions),
+               liquid_of(all, settings.conditions.medium)},
         cache(carbon),
         cold{carbon.hopping, carbon.background, {}, make_nodes(settings.tolerance)},
         cold_cache(cold),
@@ -114,7 +71,54 @@ struct Binder::Impl {
   TubeCache cold_cache;
   ContactTerms contacts;
   ContactTerms warm_sheets;  // for sheets at the conditions
+
+  void describe_first(const TubeObject& tubes, Binding& row);
+  void describe_second(const Object& object, Binding& row);
+  /// A row with all that is known of it before its energies.
+  Binding described(const Placement& placement);
 };
+
+// Of several walls, the outermost one stands for the body.
+void Binder::Impl::describe_first(const TubeObject& tubes, Binding& row) {
+  const Tube& wall = tubes.walls.back();
+  row.object_1 = label_of(tubes);
+  row.kind_1 = kind_of(wall);
+  row.diameter_1_nm = wall.diameter_nm();
+  row.chiral_angle_1_deg = wall.chiral_angle_deg();
+  row.band_gap_1_eV = cache.gaps(wall).band_gap_eV;
+}
+
+void Binder::Impl::describe_second(const Object& object, Binding& row) {
+  row.object_2 = label_of(object);
+  const TubeObject* tubes = std::get_if<TubeObject>(&object);
+  if (!tubes) {
+    row.kind_2 = std::holds_alternative<SheetObject>(object) ? "sheet" : "half-space";
+    return;
+  }
+  const Tube& wall = tubes->walls.back();
+  row.kind_2 = kind_of(wall);
+  row.diameter_2_nm = wall.diameter_nm();
+  row.chiral_angle_2_deg = wall.chiral_angle_deg();
+  row.band_gap_2_eV = cache.gaps(wall).band_gap_eV;
+}
+
+Binding Binder::Impl::described(const Placement& placement) {
+  Binding row;
+  const TubeObject& object = tubes_of(placement.first);
+  if (placement.arrangement == Arrangement::coaxial) {
+    describe_first({{object.walls.begin(), object.walls.end() - 1}}, row);
+    describe_second(TubeObject{{object.walls.back()}}, row);
+  } else {
+    describe_first(object, row);
+    describe_second(*placement.second, row);
+  }
+  row.arrangement = arrangement_word(placement.arrangement);
+  row.temperature_K = settings.conditions.temperature_K;
+  row.chemical_potential_eV = settings.conditions.chemical_potential_eV;
+  row.medium = settings.conditions.medium;
+  row.contact_target = settings.contact_target;
+  return row;
+}
 
 Binder::Binder(const Catalogs& catalogs, const Settings& settings)
     : impl_(std::make_unique<Impl>(catalogs, settings)) {}
@@ -129,8 +133,7 @@ const Catalogs& Binder::catalogs() const {
 
 void Binder::announce(const std::vector<Placement>& rows) const {
   for (const Placement& row : rows) {
-    check(row);
-    check_retarded(impl_->settings.conditions, row);
+    require_row(row, impl_->catalogs, impl_->carbon.medium, impl_->settings.conditions.retarded);
     if (row.arrangement == Arrangement::coaxial)
       announce_coaxial(tubes_of(row.first), impl_->carbon, impl_->cache);
     else
@@ -143,48 +146,42 @@ void Binder::warm(const Tube& tube) const {
 }
 
 Binding Binder::bind(const Placement& placement) const {
-  const bool coaxial = placement.arrangement == Arrangement::coaxial;
-  check(placement);
-  check_retarded(impl_->settings.conditions, placement);
-  const TubeObject& object = tubes_of(placement.first);
-  const TubeObject first =
-      coaxial ? TubeObject{{object.walls.begin(), object.walls.end() - 1}} : object;
-  const TubeObject second =
-      coaxial ? TubeObject{{object.walls.back()}} : tubes_of(*placement.second);
-
-  Binding row;
-  row.object_1 = label_of(first);
-  row.object_2 = label_of(second);
-  // Of several walls, the outermost one stands for the body.
-  const Tube &one = first.walls.back(), &other = second.walls.back();
-  row.kind_1 = kind_of(one);
-  row.kind_2 = kind_of(other);
-  row.diameter_1_nm = one.diameter_nm();
-  row.diameter_2_nm = other.diameter_nm();
-  row.chiral_angle_1_deg = one.chiral_angle_deg();
-  row.chiral_angle_2_deg = other.chiral_angle_deg();
-  row.band_gap_1_eV = impl_->cache.gaps(one).band_gap_eV;
-  row.band_gap_2_eV = impl_->cache.gaps(other).band_gap_eV;
-  row.arrangement = arrangement_word(placement.arrangement);
-  row.temperature_K = impl_->settings.conditions.temperature_K;
-  row.chemical_potential_eV = impl_->settings.conditions.chemical_potential_eV;
-  row.medium = impl_->settings.conditions.medium;
-  row.contact_target = impl_->settings.contact_target;
-  const ContactTerm& contact = impl_->contacts.term(impl_->settings.contact_target);
-  if (coaxial)
-    bind_coaxial(object, impl_->carbon, impl_->cache, contact, row);
-  else
-    bind_beside(*curve(placement), placement.gap_nm, impl_->settings.tolerance, contact, row);
+  require_row(placement, impl_->catalogs, impl_->carbon.medium,
+              impl_->settings.conditions.retarded);
+  Binding row = impl_->described(placement);
+  if (placement.arrangement == Arrangement::coaxial) {
+    bind_coaxial(tubes_of(placement.first), impl_->carbon, impl_->cache,
+                 impl_->contacts.term(impl_->settings.contact_target), row);
+    return row;
+  }
+  const auto curve = this->curve(placement);
+  const ContactTerm* contact = nullptr;
+  if (curve->has_contact()) contact = &impl_->contacts.term(impl_->settings.contact_target);
+  bind_beside(*curve, placement, impl_->settings.tolerance, contact, row);
   return row;
 }
 
 std::unique_ptr<PairCurve> Binder::curve(const Placement& placement) const {
-  if (placement.arrangement == Arrangement::coaxial)
-    throw std::invalid_argument("Binder::curve: the arrangement must leave the gap free");
-  check(placement);
-  check_retarded(impl_->settings.conditions, placement);
-  return std::make_unique<ParallelCurve>(tubes_of(placement.first), tubes_of(*placement.second),
-                                         impl_->carbon, impl_->cache);
+  const Carbon& carbon = impl_->carbon;
+  require_fit(placement, impl_->catalogs, carbon.medium, carbon.conditions.retarded);
+  const TubeObject& first = tubes_of(placement.first);
+  switch (placement.arrangement) {
+    case Arrangement::coaxial:
+      break;
+    case Arrangement::parallel:
+      return std::make_unique<ParallelCurve>(first, tubes_of(*placement.second), carbon,
+                                             impl_->cache);
+    case Arrangement::crossed:
+      return std::make_unique<CrossedCurve>(first, tubes_of(*placement.second),
+                                            *placement.angle_deg, carbon, impl_->cache);
+    case Arrangement::over: {
+      std::optional<Medium> half_space;
+      if (const auto* below = std::get_if<HalfSpaceObject>(&*placement.second))
+        half_space = impl_->catalogs.medium(below->medium);
+      return std::make_unique<OverCurve>(first, half_space, carbon, impl_->cache);
+    }
+  }
+  throw std::invalid_argument("Binder::curve: the arrangement must leave the gap free");
 }
 
 double Binder::contact_eV_per_nm(const Placement& placement,

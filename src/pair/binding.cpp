@@ -31,7 +31,7 @@ FieldValue value_of(double member) {
   return member;
 }
 FieldValue value_of(const std::string& member) {
-  return member;
+  return member.empty() ? FieldValue() : FieldValue(member);
 }
 FieldValue value_of(Status member) {
   return std::string(status_word(member));
@@ -44,7 +44,10 @@ void assign(double& member, const FieldValue& value) {
   member = number_in(value);
 }
 void assign(std::string& member, const FieldValue& value) {
-  member = text_in(value);
+  if (std::holds_alternative<std::monostate>(value))
+    member.clear();
+  else
+    member = text_in(value);
 }
 void assign(Status& member, const FieldValue& value) {
   member = parse_status(text_in(value));
@@ -101,6 +104,7 @@ const std::vector<BindingField>& binding_fields() {
       field<&Binding::arrangement>("arrangement"),
       field<&Binding::gap_nm>("gap_nm"),
       field<&Binding::axis_distance_nm>("axis_distance_nm"),
+      field<&Binding::angle_deg>("angle_deg"),
       field<&Binding::temperature_K>("temperature_K"),
       field<&Binding::chemical_potential_eV>("chemical_potential_eV"),
       field<&Binding::medium>("medium"),
@@ -108,20 +112,29 @@ const std::vector<BindingField>& binding_fields() {
       field<&Binding::dispersion_eV_per_nm>("dispersion_eV_per_nm"),
       field<&Binding::contact_eV_per_nm>("contact_eV_per_nm"),
       field<&Binding::energy_eV_per_nm>("energy_eV_per_nm"),
+      field<&Binding::dispersion_eV>("dispersion_eV"),
+      field<&Binding::contact_eV>("contact_eV"),
+      field<&Binding::energy_eV>("energy_eV"),
       field<&Binding::energy_mJ_per_m2>("energy_mJ_per_m2"),
       field<&Binding::energy_meV_per_atom>("energy_meV_per_atom"),
       field<&Binding::pressure_dispersion_GPa>("pressure_dispersion_GPa"),
       field<&Binding::pressure_GPa>("pressure_GPa"),
       field<&Binding::electronic_share_eV_per_nm>("electronic_share_eV_per_nm"),
+      field<&Binding::electronic_share_eV>("electronic_share_eV"),
       field<&Binding::thermal_share>("thermal_share"),
       field<&Binding::retardation_factor>("retardation_factor"),
       field<&Binding::pull_out_force_nN>("pull_out_force_nN"),
       field<&Binding::cut_energy_eV_per_nm>("cut_energy_eV_per_nm"),
       field<&Binding::pair_potential_eV_per_nm>("pair_potential_eV_per_nm"),
+      field<&Binding::pair_potential_eV>("pair_potential_eV"),
       field<&Binding::equilibrium_gap_nm>("equilibrium_gap_nm"),
       field<&Binding::well_depth_eV_per_nm>("well_depth_eV_per_nm"),
+      field<&Binding::well_depth_eV>("well_depth_eV"),
       field<&Binding::stiffness_eV_per_nm3>("stiffness_eV_per_nm3"),
+      field<&Binding::stiffness_eV_per_nm2>("stiffness_eV_per_nm2"),
+      field<&Binding::exponent>("exponent"),
       field<&Binding::first_round_trip_eV_per_nm>("first_round_trip_eV_per_nm"),
+      field<&Binding::first_round_trip_eV>("first_round_trip_eV"),
       field<&Binding::relative_error>("relative_error"),
       field<&Binding::energy_error>("energy_error"),
       field<&Binding::pressure_error>("pressure_error"),

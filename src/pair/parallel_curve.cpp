@@ -1,5 +1,6 @@
 #include "parallel_curve.hpp"
 
+#include "density_sums.hpp"
 #include "tube_body.hpp"
 
 #include <gapwright/contact/beside.hpp>
@@ -74,16 +75,14 @@ Estimate ParallelCurve::electronic_share(double gap_nm) const {
   const Bodies flat = bodies(Electrons::flat, here);
   const FrequencyDensity less = own.coupling->density(*flat.first, *flat.second).energy;
   FrequencyDensity difference = own.own.energy;
-  for (std::size_t k = 0; k < difference.full.size(); ++k) {
-    difference.full[k] -= less.full[k];
-    difference.halved[k] -= less.halved[k];
-  }
+  add_density(difference, less, -1.0);
   return frequency_sum(difference, carbon_.nodes, here.xi, carbon_.conditions);
 }
 
 SmoothEnergy ParallelCurve::contact(const PairFunction& pair, double gap_nm) const {
   const double distance = touching_nm() + gap_nm;
   SmoothEnergy sum;
+  if (!has_contact()) return sum;
   for (const Tube& a : first_.walls)
     for (const Tube& b : second_.walls) {
       const SmoothEnergy e = parallel_energy(pair, a.radius_nm, b.radius_nm, distance);

@@ -22,7 +22,7 @@ class ParallelCurve final : public PairCurve {
   void announce(double closest_gap_nm) const override;
   CurvePoint dispersion(double gap_nm, bool with_slope, RoundTrips trips) const override;
   Estimate electronic_share(double gap_nm) const override;
-  bool has_contact() const override { return true; }
+  bool has_contact() const override { return carbon_.in_vacuum(); }
   /// All pairs of walls of the two tubes.
   SmoothEnergy contact(const PairFunction& pair, double gap_nm) const override;
 

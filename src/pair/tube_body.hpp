@@ -9,7 +9,8 @@
 
 namespace gapwright {
 
-/// The outward scatterer of all walls of an object, with a window that covers the one given.
+/// The outward scatterer of all walls of an object, with a window that covers the one given. The
+/// medium of the cache stands outside the outermost wall, vacuum inside it.
 std::shared_ptr<const Scatterer> body_scatterer(const TubeObject& object, Electrons electrons,
                                                 const Window& window, TubeCache& cache);
 

@@ -96,7 +96,7 @@ TubeGaps TubeCache::gaps(const Tube& tube) {
   return gaps_.emplace(tube.chirality, gaps).first->second;
 }
 
-const FlatResponse& TubeCache::flat(IndexRange xi) {
+std::shared_ptr<const FlatResponse> TubeCache::shared_flat(IndexRange xi) {
   const std::lock_guard lock(flat_mutex_);
   auto& flat = flat_[xi.first];
   // Ranges towards small frequencies are those of far bodies, whose waves are as much longer. At
@@ -107,10 +107,10 @@ const FlatResponse& TubeCache::flat(IndexRange xi) {
                                      : contact * nodes.xi.node(xi.first) /
                                            nodes.xi.node(contact_frequencies(nodes).first);
   if (!flat)
-    flat = std::make_unique<FlatResponse>(
+    flat = std::make_shared<const FlatResponse>(
         carbon_.hopping, carbon_.conditions, carbon_.nodes, xi, lowest,
         flat_highest_per_exponent * largest_exponent(carbon_.nodes.tolerance));
-  return *flat;
+  return flat;
 }
 
 std::shared_ptr<const Scatterer> TubeCache::kept(const Key& key, const Window& window) {
@@ -140,12 +140,17 @@ void TubeCache::keep(const Key& key, std::shared_ptr<const Scatterer> scatterer)
 }
 
 std::shared_ptr<const Scatterer> TubeCache::scatterer(const Tube& tube, Channel channel,
-                                                      Electrons electrons, const Window& window) {
-  const Key key{{tube.chirality, window.xi.first, window.fine}, channel, electrons};
+                                                      Electrons electrons, const Window& window,
+                                                      Outside outside) {
+  if (carbon_.in_vacuum()) outside = Outside::vacuum;
+  const Key key{{tube.chirality, window.xi.first, window.fine}, channel, electrons, outside};
   if (auto found = kept(key, window)) return found;
   const auto response = shell(tube, electrons, window);
+  const Window& whole = response->window();
   const auto made = std::make_shared<const Scatterer>(
-      shell_scatterer(channel, *response, carbon_.background, response->window()));
+      outside == Outside::vacuum
+          ? shell_scatterer(channel, *response, carbon_.background, whole)
+          : liquid_shell_scatterer(channel, *response, carbon_.background, carbon_.medium, whole));
   keep(key, made);
   return made;
 }

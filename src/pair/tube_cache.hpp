@@ -3,6 +3,7 @@
 
 #include <gapwright/bands/tube_bands.hpp>
 #include <gapwright/catalog/entries.hpp>
+#include <gapwright/catalog/media.hpp>
 #include <gapwright/response/flat_response.hpp>
 #include <gapwright/shell/scatterer.hpp>
 
@@ -21,10 +22,16 @@ struct Carbon {
   Background background;
   Conditions conditions;
   Nodes nodes;
+  Medium medium{};  ///< around all bodies
+
+  bool in_vacuum() const { return medium.name == Medium{}.name; }
 };
 
 /// Whose π electrons a shell has.
 enum class Electrons { own, flat };
+
+/// What stands outside a wall; inside is vacuum.
+enum class Outside { vacuum, medium };
 
 /// Computes each tube's response on the largest window asked for so far; responses and scatterers
 /// are kept in stores of bounded size, the least recently used one leaves first. Safe to call from
@@ -40,14 +47,16 @@ class TubeCache {
 
   /// A scatterer whose window covers the one given.
   std::shared_ptr<const Scatterer> scatterer(const Tube& tube, Channel channel, Electrons electrons,
-                                             const Window& window);
+                                             const Window& window,
+                                             Outside outside = Outside::vacuum);
   /// The response itself, with own or flat π electrons, on a window that covers the one given.
   std::shared_ptr<const ShellResponse> shell(const Tube& tube, Electrons electrons,
                                              const Window& window);
   TubeGaps gaps(const Tube& tube);
 
   /// The flat sheet's response on waves that any tube's cells need at these frequencies.
-  const FlatResponse& flat(IndexRange xi);
+  const FlatResponse& flat(IndexRange xi) { return *shared_flat(xi); }
+  std::shared_ptr<const FlatResponse> shared_flat(IndexRange xi);
 
  private:
   struct Entry {
@@ -60,7 +69,7 @@ class TubeCache {
   // Rows of one frequency range and one lattice of wave numbers share responses; the range's first
   // index stands for it.
   using EntryKey = std::tuple<Chirality, int, bool>;
-  using Key = std::tuple<EntryKey, Channel, Electrons>;
+  using Key = std::tuple<EntryKey, Channel, Electrons, Outside>;
   struct Kept {
     Key key;
     std::shared_ptr<const Scatterer> scatterer;
@@ -85,7 +94,7 @@ class TubeCache {
   std::map<Key, std::list<Kept>::iterator> kept_index_;
   std::size_t kept_bytes_ = 0;
   std::mutex flat_mutex_;
-  std::map<int, std::unique_ptr<FlatResponse>> flat_;
+  std::map<int, std::shared_ptr<const FlatResponse>> flat_;
 };
 
 }  // namespace gapwright

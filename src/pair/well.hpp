@@ -12,8 +12,8 @@ namespace gapwright {
 struct Well {
   double gap_nm = 0.0;
   double gap_error_nm = 0.0;
-  double stiffness_eV_per_nm3 = 0.0;
-  CurvePoint dispersion;  ///< at the gap
+  double stiffness = 0.0;  ///< d²E/dg²
+  CurvePoint dispersion;   ///< at the gap
 };
 
 inline constexpr double closest_well_nm = 0.22;

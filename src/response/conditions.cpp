@@ -35,12 +35,6 @@ void validate(const Conditions& conditions) {
                       .excerpt = {},
                       .expected = "a number of eV",
                       .nearest = "0"});
-  if (conditions.medium != "vacuum")
-    throw InputError({.what = "medium '" + conditions.medium + "' is not known",
-                      .where = "medium",
-                      .excerpt = {},
-                      .expected = "vacuum",
-                      .nearest = "vacuum"});
 }
 
 void validate(const Conditions& conditions, const HoppingSet& hopping) {

@@ -12,12 +12,14 @@ import harness
 from harness import BESIDE, EXAMPLE, SWEEP
 
 FIELDS = """object_1 object_2 kind_1 kind_2 diameter_1_nm diameter_2_nm chiral_angle_1_deg
-    chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm temperature_K
-    chemical_potential_eV medium contact_target dispersion_eV_per_nm contact_eV_per_nm
-    energy_eV_per_nm energy_mJ_per_m2 energy_meV_per_atom pressure_dispersion_GPa pressure_GPa
-    electronic_share_eV_per_nm thermal_share retardation_factor pull_out_force_nN cut_energy_eV_per_nm
-    pair_potential_eV_per_nm equilibrium_gap_nm well_depth_eV_per_nm stiffness_eV_per_nm3
-    first_round_trip_eV_per_nm relative_error energy_error pressure_error electronic_share_error
+    chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm angle_deg
+    temperature_K chemical_potential_eV medium contact_target dispersion_eV_per_nm
+    contact_eV_per_nm energy_eV_per_nm dispersion_eV contact_eV energy_eV energy_mJ_per_m2
+    energy_meV_per_atom pressure_dispersion_GPa pressure_GPa electronic_share_eV_per_nm
+    electronic_share_eV thermal_share retardation_factor pull_out_force_nN cut_energy_eV_per_nm
+    pair_potential_eV_per_nm pair_potential_eV equilibrium_gap_nm well_depth_eV_per_nm
+    well_depth_eV stiffness_eV_per_nm3 stiffness_eV_per_nm2 exponent first_round_trip_eV_per_nm
+    first_round_trip_eV relative_error energy_error pressure_error electronic_share_error
     equilibrium_gap_error well_depth_error status""".split()
 ROWS = ["--inner", "10,10", "--gap-nm", "0.33:0.36"]
 

@@ -28,8 +28,14 @@ struct RibbonObject {
   bool operator==(const RibbonObject&) const = default;
 };
 
-/// What a label can name.
-using Object = std::variant<TubeObject, SheetObject, RibbonObject>;
+/// A medium that fills all below a plane surface, by its catalogue name.
+struct HalfSpaceObject {
+  std::string medium;
+  bool operator==(const HalfSpaceObject&) const = default;
+};
+
+/// What takes part in a row. Labels name tubes, ribbons and the sheet.
+using Object = std::variant<TubeObject, SheetObject, RibbonObject, HalfSpaceObject>;
 
 struct ParsedLabel {
   Object object;
@@ -44,7 +50,7 @@ struct ParsedLabel {
 /// lines.
 ParsedLabel parse_label(std::string_view label);
 
-/// "(5,5)@(10,10)", "graphene", "13-AGNR".
+/// "(5,5)@(10,10)", "graphene", "13-AGNR", the name of the medium.
 std::string label_of(const Object& object);
 
 }  // namespace gapwright

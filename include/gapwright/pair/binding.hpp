@@ -30,24 +30,30 @@ struct Binding {
   std::optional<double> chiral_angle_1_deg, chiral_angle_2_deg;
   std::optional<double> band_gap_1_eV, band_gap_2_eV;
   std::string arrangement;
-  std::optional<double> gap_nm, axis_distance_nm;
+  std::optional<double> gap_nm, axis_distance_nm, angle_deg;
   double temperature_K = 0.0;
   double chemical_potential_eV = 0.0;
   std::string medium = "vacuum";
   std::string contact_target;
   std::optional<double> dispersion_eV_per_nm, contact_eV_per_nm, energy_eV_per_nm;
+  std::optional<double> dispersion_eV, contact_eV, energy_eV;  ///< of one crossing
   std::optional<double> energy_mJ_per_m2, energy_meV_per_atom;
   std::optional<double> pressure_dispersion_GPa, pressure_GPa;
-  std::optional<double> electronic_share_eV_per_nm, thermal_share;
+  std::optional<double> electronic_share_eV_per_nm, electronic_share_eV, thermal_share;
   std::optional<double> retardation_factor;  ///< dispersion over the non-retarded one
-  std::optional<double> pull_out_force_nN, cut_energy_eV_per_nm, pair_potential_eV_per_nm;
-  std::optional<double> equilibrium_gap_nm, well_depth_eV_per_nm, stiffness_eV_per_nm3;
-  std::optional<double> first_round_trip_eV_per_nm;
+  std::optional<double> pull_out_force_nN, cut_energy_eV_per_nm;
+  std::optional<double> pair_potential_eV_per_nm, pair_potential_eV;
+  std::optional<double> equilibrium_gap_nm, well_depth_eV_per_nm, well_depth_eV;
+  std::optional<double> stiffness_eV_per_nm3, stiffness_eV_per_nm2;
+  std::optional<double> exponent;  ///< -d ln|dispersion|/d ln(axis distance)
+  std::optional<double> first_round_trip_eV_per_nm, first_round_trip_eV;
+  // Errors of energies are per length where the energies are.
   std::optional<double> relative_error, energy_error, pressure_error, electronic_share_error;
   std::optional<double> equilibrium_gap_error, well_depth_error;
   Status status = Status::ok;
   std::string message;                ///< why the status is not ok
   std::vector<Interface> interfaces;  ///< more than two walls
+  std::vector<std::string> notes;     ///< what limits the model here
 };
 
 /// A field of a row by name: how exports, stores and sorting reach it.

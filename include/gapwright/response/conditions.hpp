@@ -11,8 +11,8 @@ namespace gapwright {
 struct Conditions {
   double temperature_K = 0.0;
   double chemical_potential_eV = 0.0;  ///< from neutrality at T = 0
-  std::string medium = "vacuum";
-  bool retarded = false;  ///< two coaxial walls only (METHODS §9)
+  std::string medium = "vacuum";       ///< vacuum or a liquid, by its catalogue name
+  bool retarded = false;               ///< two coaxial walls only (METHODS §9)
   bool operator==(const Conditions&) const = default;
 };
 
@@ -26,7 +26,8 @@ double thermal_energy_eV(const Conditions& conditions);
 /// The lattices of a tolerance at these conditions.
 Nodes make_nodes(double tolerance, const Conditions& conditions);
 
-/// Throws InputError for conditions that are out of range or not yet computed, by name.
+/// Throws InputError for conditions that are out of range or not yet computed, by name. The medium
+/// is left to those who hold a catalogue; carbon answers alike in any.
 void validate(const Conditions& conditions);
 /// Also for a chemical potential beyond 0.8 hoppings.
 void validate(const Conditions& conditions, const HoppingSet& hopping);
