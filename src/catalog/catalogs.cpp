@@ -141,6 +141,27 @@ const Medium& Catalogs::medium(const std::string& name) const {
                     nearest_word(name, names)});
 }
 
+std::vector<std::string> Catalogs::liquid_names() const {
+  std::vector<std::string> names{medium().name};
+  for (const Medium& medium : media_)
+    if (medium.liquid) names.push_back(medium.name);
+  return names;
+}
+
+const Medium& Catalogs::liquid(const std::string& name) const {
+  const auto known = std::find_if(media_.begin(), media_.end(),
+                                  [&](const Medium& medium) { return medium.name == name; });
+  const bool solid = known != media_.end() && !known->liquid;
+  const auto names = liquid_names();
+  if (solid || (known == media_.end() && !name.empty() && name != names.front()))
+    throw InputError({solid ? name + " is no liquid" : "unknown liquid '" + name + "'",
+                      {},
+                      {},
+                      "one of " + joined(names),
+                      solid ? std::string() : nearest_word(name, names)});
+  return medium(name);
+}
+
 std::string Catalogs::hash() const {
   ContentHash hash;
   for (const HoppingSet& set : hopping_sets_) {

@@ -1,51 +1,52 @@
+#include "bind_request.hpp"
 #include "binding_text.hpp"
 #include "commands.hpp"
+#include "distance_table.hpp"
 #include "exit_code.hpp"
 #include "output.hpp"
 #include "row_text.hpp"
 #include "setup.hpp"
 
+#include <algorithm>
+#include <cmath>
+
 namespace gapwright::cli {
 namespace {
 
-constexpr const char* expected_objects =
-    "walls in walls, inner@outer, such as 5,5@10,10, or two tubes such as 10,10 17,0";
-const NumberRange gap_range{min_gap_nm, farthest_gap_nm, "nm"};
+constexpr int table_rows = 25;
 
-InputError unfit(const std::string& what, const std::string& nearest = {}) {
-  return InputError({what, "bind", {}, expected_objects, nearest});
+/// Gaps whose logarithms are evenly spaced, both ends included.
+std::vector<Placement> placements_of(const BindRequest& request) {
+  if (!request.distances_nm) return {request.placement};
+  const auto [low, high] = *request.distances_nm;
+  std::vector<Placement> rows(table_rows, request.placement);
+  for (int i = 0; i < table_rows; ++i)
+    rows[std::size_t(i)].gap_nm = low * std::pow(high / low, i / double(table_rows - 1));
+  rows.back().gap_nm = high;
+  return rows;
 }
 
-Object parse_object(const std::string& label) {
-  const ParsedLabel parsed = parse_label(label);
-  for (const std::string& remark : parsed.notes) note("note: " + remark);
-  if (!std::holds_alternative<TubeObject>(parsed.object))
-    throw unfit(label_of(parsed.object) + " is no tube; this version binds tubes");
-  return parsed.object;
+std::string text_of(const BindRequest& request, const std::vector<Binding>& rows, bool json) {
+  if (!json) return request.distances_nm ? distance_table(rows) : binding_text(rows.front());
+  std::string lines;
+  for (const Binding& row : rows) lines += row_json(row).dump() + "\n";
+  return lines;
 }
 
-Placement parse_walls(const Words& words) {
-  const Object object = parse_object(words.operands.front());
-  if (tubes_of(object).walls.size() < 2)
-    throw unfit(label_of(object) + " is one object", label_of(object) + " " + label_of(object));
-  for (const char* option : {"--gap-nm", "--parallel"})
-    if (words.has(option) || words.flag(option))
-      throw InputError({std::string(option) + " is for two objects; the gaps of walls in walls are "
-                                              "those of their radii",
-                        option,
-                        {},
-                        "no such option here",
-                        {}});
-  return {Arrangement::coaxial, object};
-}
-
-Placement parse_placement(const Words& words) {
-  if (words.operands.empty()) throw unfit("no object");
-  if (words.operands.size() == 1) return parse_walls(words);
-  if (words.operands.size() > 2)
-    throw unfit("more than two objects", words.operands[0] + " " + words.operands[1]);
-  return {Arrangement::parallel, parse_object(words.operands[0]), parse_object(words.operands[1]),
-          words.number("--gap-nm", gap_range)};
+/// The notes of a row, or of the closest and the farthest one of a table.
+void print_notes(const std::vector<Binding>& rows) {
+  const Binding &closest = rows.front(), &farthest = rows.back();
+  const auto both = [&](const std::string& remark) {
+    const auto& others = farthest.notes;
+    return std::find(others.begin(), others.end(), remark) != others.end();
+  };
+  for (const std::string& remark : closest.notes)
+    note("note: " + (both(remark) ? "" : gap_text(closest) + ": ") + remark);
+  for (const std::string& remark : farthest.notes) {
+    const auto& known = closest.notes;
+    if (std::find(known.begin(), known.end(), remark) == known.end())
+      note("note: " + gap_text(farthest) + ": " + remark);
+  }
 }
 
 }  // namespace
@@ -53,16 +54,26 @@ Placement parse_placement(const Words& words) {
 int bind(const Words& words) {
   const Catalogs catalogs = load_catalogs(words);
   const Settings settings = read_settings(words, catalogs);
-  const Placement placement = parse_placement(words);
-  const Binder binder(catalogs, settings);
-  const Binding row = settings.conditions.retarded
-                          ? at_option("--retarded", [&] { return binder.bind(placement); })
-                          : binder.bind(placement);
-  print(words.flag("--json") ? row_json(row).dump() + "\n" : binding_text(row));
-  if (row.status == Status::ok) return good;
-  note("gapwright: " + pair_text(row) + ": " + std::string(status_word(row.status)) + ", " +
-       row.message);
-  return some_failed;
+  const BindRequest request = read_bind_request(words, catalogs);
+  const std::vector<Binding> rows = at_bind_options([&] {
+    const Binder binder(catalogs, settings);
+    const std::vector<Placement> placements = placements_of(request);
+    binder.announce(placements);
+    std::vector<Binding> all;
+    for (const Placement& placement : placements) all.push_back(binder.bind(placement));
+    return all;
+  });
+  print(text_of(request, rows, words.flag("--json")));
+  print_notes(rows);
+  bool ok = true;
+  for (const Binding& row : rows) {
+    if (row.status == Status::ok) continue;
+    ok = false;
+    const std::string place = row.gap_nm && row.arrangement != "coaxial" ? " " + gap_text(row) : "";
+    note("gapwright: " + pair_name(row) + place + ": " + std::string(status_word(row.status)) +
+         ", " + row.message);
+  }
+  return ok ? good : some_failed;
 }
 
 }  // namespace gapwright::cli

@@ -1,5 +1,6 @@
 #include "binding_text.hpp"
 
+#include "row_text.hpp"
 #include "text_table.hpp"
 
 #include <gapwright/pair/placement.hpp>
@@ -30,24 +31,44 @@ std::string line(const std::string& name, std::optional<double> value, int decim
 std::string body_line(const char* name, const std::string& object, const std::string& kind,
                       std::optional<double> diameter_nm, std::optional<double> chiral_angle_deg,
                       std::optional<double> band_gap_eV) {
-  return fmt::format("  {:<8}{}, {}, diameter {} nm, chiral angle {} deg, gap {} eV\n", name,
-                     object, kind, fixed(diameter_nm, 4), fixed(chiral_angle_deg, 2),
-                     fixed(band_gap_eV, 4));
+  std::string text = fmt::format("  {:<8}{}, {}", name, object, kind);
+  if (diameter_nm)
+    text += fmt::format(", diameter {} nm, chiral angle {} deg, gap {} eV", fixed(diameter_nm, 4),
+                        fixed(chiral_angle_deg, 2), fixed(band_gap_eV, 4));
+  return text + "\n";
+}
+
+bool is(const Binding& row, Arrangement arrangement) {
+  return row.arrangement == arrangement_word(arrangement);
 }
 
 bool coaxial(const Binding& row) {
-  return row.arrangement == arrangement_word(Arrangement::coaxial);
+  return is(row, Arrangement::coaxial);
+}
+
+/// What a row holds of one energy, per length or in all, and its unit.
+struct Energy {
+  std::optional<double> value;
+  const char* unit;
+};
+Energy either(std::optional<double> per_length, std::optional<double> in_all) {
+  return in_all ? Energy{in_all, "eV"} : Energy{per_length, "eV/nm"};
 }
 
 std::string geometry_text(const Binding& row) {
   return "geometry\n" +
          body_line(coaxial(row) ? "inner" : "first", row.object_1, row.kind_1, row.diameter_1_nm,
                    row.chiral_angle_1_deg, row.band_gap_1_eV) +
-         body_line(coaxial(row) ? "outer" : "second", row.object_2, row.kind_2, row.diameter_2_nm,
-                   row.chiral_angle_2_deg, row.band_gap_2_eV) +
+         body_line(coaxial(row)                 ? "outer"
+                   : is(row, Arrangement::over) ? "below"
+                                                : "second",
+                   row.object_2, row.kind_2, row.diameter_2_nm, row.chiral_angle_2_deg,
+                   row.band_gap_2_eV) +
          line("gap", row.gap_nm, 4, "nm", row.equilibrium_gap_error,
               row.equilibrium_gap_nm ? "the bottom of the well" : "") +
-         line("axis distance", row.axis_distance_nm, 4, "nm");
+         line("axis distance", row.axis_distance_nm, 4, "nm", {},
+              is(row, Arrangement::over) ? "from the plane" : "") +
+         line("angle", row.angle_deg, 2, "deg");
 }
 
 std::optional<double> absolute(std::optional<double> relative, std::optional<double> value) {
@@ -56,25 +77,30 @@ std::optional<double> absolute(std::optional<double> relative, std::optional<dou
 }
 
 std::string energy_text(const Binding& row) {
+  const Energy dispersion = either(row.dispersion_eV_per_nm, row.dispersion_eV);
+  const Energy share = either(row.electronic_share_eV_per_nm, row.electronic_share_eV);
+  const char* unit = dispersion.unit;
   std::optional<double> geometric;
-  if (row.dispersion_eV_per_nm && row.electronic_share_eV_per_nm)
-    geometric = *row.dispersion_eV_per_nm - *row.electronic_share_eV_per_nm;
-  const char* unit = "eV/nm";
+  if (dispersion.value && share.value) geometric = *dispersion.value - *share.value;
   return "energy (negative: attraction)\n" +
-         line("dispersion", row.dispersion_eV_per_nm, energy_decimals, unit,
-              absolute(row.relative_error, row.dispersion_eV_per_nm)) +
+         line("dispersion", dispersion.value, energy_decimals, unit,
+              absolute(row.relative_error, dispersion.value)) +
          line("  retardation", row.retardation_factor, 6, "", {}, "times the non-retarded one") +
          line("  by geometry", geometric, energy_decimals, unit, {},
               "the same walls with the π electrons of flat graphene") +
-         line("  by electrons", row.electronic_share_eV_per_nm, energy_decimals, unit,
-              row.electronic_share_error, "what the walls' own bands change") +
-         line("  first round trip", row.first_round_trip_eV_per_nm, energy_decimals, unit, {},
-              "of the dispersion") +
-         line("contact", row.contact_eV_per_nm, energy_decimals, unit, {},
-              "target " + row.contact_target) +
-         line("total", row.energy_eV_per_nm, energy_decimals, unit, row.energy_error) +
+         line("  by electrons", share.value, energy_decimals, unit, row.electronic_share_error,
+              "what the walls' own bands change") +
+         line("  first round trip",
+              either(row.first_round_trip_eV_per_nm, row.first_round_trip_eV).value,
+              energy_decimals, unit, {}, "of the dispersion") +
+         line("contact", either(row.contact_eV_per_nm, row.contact_eV).value, energy_decimals, unit,
+              {}, "target " + row.contact_target) +
+         line("total", either(row.energy_eV_per_nm, row.energy_eV).value, energy_decimals, unit,
+              row.energy_error) +
          line("", row.energy_mJ_per_m2, 3, "mJ/m2", {}, "of the mid radius") +
-         line("", row.energy_meV_per_atom, 4, "meV/atom", {}, "of that area");
+         line("", row.energy_meV_per_atom, 4, "meV/atom", {}, "of that area") +
+         line("exponent", row.exponent, 3, "", {},
+              "the dispersion falls as (axis distance)^-exponent");
 }
 
 std::string force_text(const Binding& row) {
@@ -89,10 +115,11 @@ std::string force_text(const Binding& row) {
 }
 
 std::string well_text(const Binding& row) {
-  if (!row.well_depth_eV_per_nm) return {};
-  return "well\n" +
-         line("depth", row.well_depth_eV_per_nm, energy_decimals, "eV/nm", row.well_depth_error) +
-         line("stiffness", row.stiffness_eV_per_nm3, 2, "eV/nm3");
+  if (!row.equilibrium_gap_nm) return {};
+  const Energy depth = either(row.well_depth_eV_per_nm, row.well_depth_eV);
+  return "well\n" + line("depth", depth.value, energy_decimals, depth.unit, row.well_depth_error) +
+         line("stiffness", row.stiffness_eV_per_nm3, 2, "eV/nm3") +
+         line("stiffness", row.stiffness_eV_per_nm2, 2, "eV/nm2");
 }
 
 std::string interfaces_text(const Binding& row) {
@@ -108,21 +135,31 @@ std::string interfaces_text(const Binding& row) {
 }
 
 std::string beside_text(const Binding& row) {
-  return "beside it\n" + line("pair potential", row.pair_potential_eV_per_nm, energy_decimals,
-                              "eV/nm", {}, "a published estimate that knows no chirality");
+  const Energy estimate = either(row.pair_potential_eV_per_nm, row.pair_potential_eV);
+  if (!estimate.value) return {};
+  return "beside it\n" + line("pair potential", estimate.value, energy_decimals, estimate.unit, {},
+                              "a published estimate that knows no chirality");
 }
 
 }  // namespace
 
-std::string pair_text(const Binding& row) {
-  return row.object_1 + (coaxial(row) ? "@" : " ") + row.object_2;
+std::string heading_text(const Binding& row) {
+  std::string text = pair_name(row) + "   ";
+  if (!is(row, Arrangement::over)) text += row.arrangement;
+  if (row.angle_deg) text += fmt::format(" at {} deg", *row.angle_deg);
+  if (!is(row, Arrangement::over)) text += ", ";
+  text += fmt::format("{} K, {}", row.temperature_K, row.medium);
+  if (row.chemical_potential_eV != 0)
+    text += fmt::format(", chemical potential {} eV", row.chemical_potential_eV);
+  return text;
+}
+
+std::string gap_text(const Binding& row) {
+  return "at a gap of " + significant(row.gap_nm, 5) + " nm";
 }
 
 std::string binding_text(const Binding& row) {
-  std::string text = fmt::format("{}   {}, {} K, {}", pair_text(row), row.arrangement,
-                                 row.temperature_K, row.medium);
-  if (row.chemical_potential_eV != 0)
-    text += fmt::format(", chemical potential {} eV", row.chemical_potential_eV);
+  std::string text = heading_text(row);
   if (row.retardation_factor) text += ", retarded";
   text += "\n\n" + geometry_text(row) + energy_text(row) + well_text(row) + interfaces_text(row) +
           force_text(row) + beside_text(row) + fmt::format("status {}", status_word(row.status));

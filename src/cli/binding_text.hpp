@@ -9,7 +9,10 @@ namespace gapwright::cli {
 
 std::string binding_text(const Binding& row);
 
-/// The pair as a user would type it, "(5,5)@(10,10)" or "(10,10) (17,0)".
-std::string pair_text(const Binding& row);
+/// The pair, how it is placed, and the conditions.
+std::string heading_text(const Binding& row);
+
+/// "at a gap of 0.34 nm".
+std::string gap_text(const Binding& row);
 
 }  // namespace gapwright::cli

@@ -114,6 +114,26 @@ Plan read_base_plan(const Words& words, const Catalogs& catalogs) {
   return words.operands.empty() ? Plan{} : read_plan(words.operands.front(), catalogs);
 }
 
+/// Liquids act on what lies beside each other, and leave no well.
+void require_liquid_in_place(const Words& words, const Plan& plan, const Catalogs& catalogs) {
+  const std::string& liquid = plan.settings.conditions.medium;
+  if (liquid.empty() || liquid == catalogs.medium().name) return;
+  const std::string where =
+      words.has("--in") ? std::string("--in") : words.operands.front() + ", key medium";
+  if (plan.arrangement == Arrangement::coaxial)
+    throw InputError({"a liquid stays outside walls in walls and changes nothing between them",
+                      where,
+                      {},
+                      "no liquid for coaxial pairs",
+                      {}});
+  if (!plan.fixed_gap_nm)
+    throw InputError({"no contact term exists in " + liquid + ", so that there is no well",
+                      where,
+                      {},
+                      "one gap beside it: --gap-nm X",
+                      {}});
+}
+
 }  // namespace
 
 RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
@@ -122,6 +142,7 @@ RankRequest read_rank_request(const Words& words, const Catalogs& catalogs) {
   apply_flags(words, request.plan);
   require_in_place(words, request.plan);
   request.plan.settings = read_settings(words, catalogs, request.plan.settings);
+  require_liquid_in_place(words, request.plan, catalogs);
   if (const auto file = words.text("--csv")) request.csv = *file;
   if (const auto file = words.text("--store")) request.store = *file;
   request.pair = words.text("--pair").value_or("");

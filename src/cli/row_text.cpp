@@ -19,6 +19,7 @@ void add_fields(Json& object, const Binding& row) {
 }
 
 void add_message(Json& object, const Binding& row) {
+  if (!row.notes.empty()) object["notes"] = row.notes;
   if (!row.message.empty()) object["message"] = row.message;
 }
 
@@ -47,8 +48,10 @@ std::string comment_lines(const std::string& comment) {
 }  // namespace
 
 std::string pair_name(const Binding& row) {
-  const bool coaxial = row.arrangement == arrangement_word(Arrangement::coaxial);
-  return row.object_1 + (coaxial ? "@" : " ") + row.object_2;
+  const char* between = row.arrangement == arrangement_word(Arrangement::coaxial) ? "@"
+                        : row.arrangement == arrangement_word(Arrangement::over)  ? " over "
+                                                                                  : " ";
+  return row.object_1 + between + row.object_2;
 }
 
 Json row_json(const Binding& row) {

@@ -13,10 +13,12 @@ namespace gapwright::cli {
 
 using Json = nlohmann::ordered_json;
 
-/// "(5,5)@(10,10)" of walls in walls, "(5,5) (10,10)" of tubes beside each other.
+/// "(5,5)@(10,10)" of walls in walls, "(5,5) (10,10)" of tubes beside or across
+/// each other, "(10,10) over silica".
 std::string pair_name(const Binding& row);
 
-/// All fields, null where empty; walls in walls add `interfaces`, a failure adds `message`.
+/// All fields, null where empty; walls in walls add `interfaces`, limits of the model `notes`, a
+/// failure `message`.
 Json row_json(const Binding& row);
 /// rank, all fields, rank_spread.
 Json ranked_json(const RankedRow& row);

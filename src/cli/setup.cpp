@@ -78,6 +78,8 @@ Settings read_settings(const Words& words, const Catalogs& catalogs, Settings ba
     at_option("--temperature-K", [&] { validate(conditions); });
   }
   conditions.retarded = conditions.retarded || words.flag("--retarded");
+  if (const auto name = words.text("--in"))
+    conditions.medium = at_option("--in", [&] { return catalogs.liquid(*name).name; });
   if (const auto name = words.text("--hopping"))
     settings.hopping = at_option("--hopping", [&] { return catalogs.hopping(*name).name; });
   if (const auto doping = words.number("--chemical-potential-eV", {-10, 10, "eV"})) {
@@ -97,8 +99,13 @@ Settings read_settings(const Words& words, const Catalogs& catalogs, Settings ba
 }
 
 bool has_settings(const Words& words) {
-  constexpr std::array options = {"--temperature-K", "--chemical-potential-eV", "--hopping",
-                                  "--background",    "--contact-target",        "--tolerance"};
+  constexpr std::array options = {"--temperature-K",
+                                  "--chemical-potential-eV",
+                                  "--hopping",
+                                  "--background",
+                                  "--contact-target",
+                                  "--tolerance",
+                                  "--in"};
   return std::any_of(options.begin(), options.end(),
                      [&](const char* option) { return words.has(option); });
 }

@@ -19,8 +19,8 @@ std::optional<Number> whole_text_as(const std::string& text) {
 }
 
 InputError not_accepted(const std::string& option, const std::string& text, const char* kind,
-                        const std::string& expected) {
-  return InputError({fmt::format("'{}' is not {}", text, kind), option, {}, expected, {}});
+                        const std::string& expected, const std::string& nearest = {}) {
+  return InputError({fmt::format("'{}' is not {}", text, kind), option, {}, expected, nearest});
 }
 
 }  // namespace
@@ -42,7 +42,10 @@ std::optional<double> Words::number(const std::string& option, const NumberRange
   const std::string unit = range.unit.empty() ? "" : " " + range.unit;
   if (!value || !std::isfinite(*value) || *value < range.low || *value > range.high)
     throw not_accepted(option, *typed, value ? "in range" : "a number",
-                       fmt::format("a number of {:g} to {:g}{}", range.low, range.high, unit));
+                       fmt::format("a number of {:g} to {:g}{}", range.low, range.high, unit),
+                       value && std::isfinite(*value)
+                           ? fmt::format("{:g}", *value < range.low ? range.low : range.high)
+                           : "");
   return value;
 }
 

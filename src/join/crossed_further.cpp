@@ -13,10 +13,10 @@ namespace gapwright {
 namespace {
 
 /// Step of the grid in steps of the lattice and per radian: the two axes tell waves apart only by
-/// their angle. A round wall smears a wave it reflects by about 1/√(kR): wide bodies need more.
-/// Further round trips are a fiftieth of the energy, so that the grid may be coarser than the
-/// lattice.
-constexpr double step_per_radian = 0.9, narrow_body = 2.2;
+/// their angle, near 90° by less than the waves themselves vary. A round wall smears a wave it
+/// reflects by about 1/√(kR): wide bodies need more. Further round trips are a fiftieth of the
+/// energy, so that the grid may be coarser than the lattice.
+constexpr double step_per_radian = 0.9, widest_step = 1.0, narrow_body = 2.2;
 /// Lowest wave number in lowest ones of the window: the rest is continued as a constant.
 constexpr double lowest_factor = 10.0;
 /// Of the coupling, rows below this share of what the mirrors neglect are left out; their part of a
@@ -163,7 +163,8 @@ bool fill(const Crossing& row, const WaveTable& a, const WaveTable& b, const Cro
 CrossedFurther further_on_grid(const Crossing& row, bool with_slope) {
   const Nodes& nodes = row.first.nodes();
   const double angle = row.angle_deg * constants::pi / 180;
-  const double step = make_nodes(nodes.tolerance).q.step * step_per_radian * angle *
+  const double step = make_nodes(nodes.tolerance).q.step *
+                      std::min(step_per_radian * angle, widest_step) *
                       std::sqrt(std::min(1.0, narrow_body * row.gap() / row.wider_radius()));
   const double lowest = lowest_factor * nodes.q.node(row.window.q.first);
   const double highest = largest_exponent(nodes.tolerance) / (4 * row.gap());

@@ -25,7 +25,7 @@ namespace {
 
 Settings checked(const Catalogs& catalogs, Settings settings) {
   validate(settings.conditions);
-  settings.conditions.medium = liquid_of(catalogs, settings.conditions.medium).name;
+  settings.conditions.medium = catalogs.liquid(settings.conditions.medium).name;
   settings.hopping = catalogs.hopping(settings.hopping).name;
   validate(settings.conditions, catalogs.hopping(settings.hopping));
   settings.background = catalogs.background(settings.background).name;
@@ -51,7 +51,7 @@ struct Binder::Impl {
         settings(checked(all, wanted)),
         carbon{all.hopping(settings.hopping), all.background(settings.background),
                settings.conditions, make_nodes(settings.tolerance, settings.conditions),
-               liquid_of(all, settings.conditions.medium)},
+               all.liquid(settings.conditions.medium)},
         cache(carbon),
         cold{carbon.hopping, carbon.background, {}, make_nodes(settings.tolerance)},
         cold_cache(cold),

@@ -4,8 +4,6 @@
 #include <gapwright/join/crossed.hpp>
 #include <gapwright/pair/binder.hpp>
 
-#include <vector>
-
 #include <fmt/format.h>
 
 namespace gapwright {
@@ -95,21 +93,6 @@ void require_well(const Placement& placement, const Medium& around) {
 }
 
 }  // namespace
-
-const Medium& liquid_of(const Catalogs& catalogs, const std::string& name) {
-  std::vector<std::string> liquids{Medium{}.name};
-  for (const Medium& medium : catalogs.media())
-    if (medium.liquid) liquids.push_back(medium.name);
-  const auto known = [&]() -> const Medium* {
-    if (name.empty() || name == liquids.front()) return &catalogs.medium();
-    for (const Medium& medium : catalogs.media())
-      if (medium.name == name) return &medium;
-    return nullptr;
-  }();
-  if (known && known->liquid) return *known;
-  refuse(known ? name + " is no liquid" : "unknown liquid '" + name + "'", "medium",
-         "one of " + joined(liquids), known ? "" : nearest_word(name, liquids));
-}
 
 void require_fit(const Placement& placement, const Catalogs& catalogs, const Medium& around,
                  bool retarded) {

@@ -4,12 +4,7 @@
 #include <gapwright/catalog/catalogs.hpp>
 #include <gapwright/pair/placement.hpp>
 
-#include <string>
-
 namespace gapwright {
-
-/// The medium around bodies: vacuum or a liquid of the catalogue. Throws InputError otherwise.
-const Medium& liquid_of(const Catalogs& catalogs, const std::string& name);
 
 /// Throws InputError unless the bodies fit the arrangement, the gap and the angle are in range, and
 /// the model holds for all of it in this medium, with retardation if so asked.

@@ -75,6 +75,8 @@ void read_settings(const TomlReader& reader, const Catalogs& catalogs, Settings&
   conditions.chemical_potential_eV =
       reader.optional_number("chemical_potential_eV", {-10, 10, "eV"}).value_or(0.0);
   at_key(reader, "temperature_K", [&] { validate(conditions); });
+  conditions.medium =
+      reader.optional_word("medium", catalogs.liquid_names()).value_or(conditions.medium);
   settings.hopping =
       reader.optional_word("hopping", names_of(catalogs.hopping_sets())).value_or("");
   at_key(reader, "chemical_potential_eV",
@@ -206,6 +208,7 @@ std::string plan_text(const Plan& plan) {
   const Settings& settings = plan.settings;
   text += fmt::format("temperature_K = {}\nchemical_potential_eV = {}\n",
                       settings.conditions.temperature_K, settings.conditions.chemical_potential_eV);
+  word("medium", settings.conditions.medium);
   word("hopping", settings.hopping);
   word("background", settings.background);
   word("contact_target", settings.contact_target);

@@ -35,7 +35,8 @@ std::vector<std::size_t> sorted_places(const std::vector<SortKey>& keys, bool de
 
 Order order_of(const std::string& field) {
   Order order{.field = std::string(binding_field(field).name)};
-  for (const char* strong : {"pull_out_force_nN", "well_depth_eV_per_nm", "stiffness_eV_per_nm3"})
+  for (const char* strong : {"pull_out_force_nN", "well_depth_eV_per_nm", "well_depth_eV",
+                             "stiffness_eV_per_nm3", "stiffness_eV_per_nm2"})
     order.descending = order.descending || order.field == strong;
   return order;
 }

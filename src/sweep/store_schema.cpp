@@ -12,7 +12,7 @@ namespace gapwright {
 namespace {
 
 constexpr std::int64_t application_id = 0x67617077;  // "gapw"
-constexpr std::int64_t schema_version = 3;
+constexpr std::int64_t schema_version = 4;
 constexpr std::string_view sqlite_signature("SQLite format 3\0", 16);
 
 InputError refused(const std::filesystem::path& file, const std::string& what,

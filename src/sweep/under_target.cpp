@@ -100,6 +100,7 @@ void change_well(const Binding& row, const Binder& binder, Binding& changed) {
 }  // namespace
 
 Binding under_target(const Binding& row, const Binder& binder, const std::string& contact_target) {
+  if (row.contact_target.empty()) return row;  // no contact term exists for it
   Binding changed = row;
   changed.contact_target = contact_target;
   if (!row.energy_eV_per_nm || !row.dispersion_eV_per_nm) return changed;

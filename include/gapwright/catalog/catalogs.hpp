@@ -30,6 +30,9 @@ class Catalogs {
   const ContactTarget& contact_target(const std::string& name = {}) const;
   /// "vacuum" is always there and the default.
   const Medium& medium(const std::string& name = {}) const;
+  /// What bodies can stand in: vacuum or a liquid.
+  const Medium& liquid(const std::string& name = {}) const;
+  std::vector<std::string> liquid_names() const;
 
   const std::vector<HoppingSet>& hopping_sets() const { return hopping_sets_; }
   const std::vector<Background>& backgrounds() const { return backgrounds_; }
