@@ -48,14 +48,15 @@ double off(double found, double wanted) {
 
 PotentialTerm::PotentialTerm(const std::vector<double>& gaps,
                              const std::vector<SmoothEnergy>& points) {
-  sign_ = !points.empty() && points.front().energy < 0 ? -1.0 : 1.0;
+  const double sign = !points.empty() && points.front().energy < 0 ? -1.0 : 1.0;
   logarithmic_ = std::all_of(points.begin(), points.end(),
-                             [&](const SmoothEnergy& p) { return sign_ * p.energy > 0; });
+                             [&](const SmoothEnergy& p) { return sign * p.energy > 0; });
+  factor_ = logarithmic_ ? sign : 1.0;
   std::vector<double> x, y, s;
   for (std::size_t i = 0; i < gaps.size(); ++i) {
     const double g = gaps[i], e = points[i].energy, d = points[i].slope, g4 = g * g * g * g;
     x.push_back(std::log(g));
-    y.push_back(logarithmic_ ? std::log(sign_ * e) : e * g4);
+    y.push_back(logarithmic_ ? std::log(sign * e) : e * g4);
     s.push_back(logarithmic_ ? g * d / e : g4 * (g * d + 4 * e));
   }
   spline_ = SlopeSpline(std::move(x), y, s);
@@ -64,13 +65,19 @@ PotentialTerm::PotentialTerm(const std::vector<double>& gaps,
 Jet PotentialTerm::at(double gap_nm) const {
   const Jet y = spline_.at(std::log(gap_nm));
   if (logarithmic_) {
-    const double e = sign_ * std::exp(y.value);
+    const double e = factor_ * std::exp(y.value);
     return {e, e * y.slope / gap_nm,
             e * (y.curvature + y.slope * (y.slope - 1)) / (gap_nm * gap_nm)};
   }
-  const double scale = std::pow(gap_nm, -4.0);
+  const double scale = factor_ * std::pow(gap_nm, -4.0);
   return {scale * y.value, scale / gap_nm * (y.slope - 4 * y.value),
           scale / (gap_nm * gap_nm) * (y.curvature - 9 * y.slope + 20 * y.value)};
+}
+
+PotentialTerm PotentialTerm::scaled(double factor) const {
+  PotentialTerm term = *this;
+  term.factor_ *= factor;
+  return term;
 }
 
 SampledTerm sample_term(const GapFunction& function, double low_gap_nm, double high_gap_nm,
@@ -107,6 +114,18 @@ SampledTerm sample_term(const GapFunction& function, double low_gap_nm, double h
   }
   result.term = term_of(known);
   return result;
+}
+
+Potential Potential::scaled(double factor) const {
+  Potential potential = *this;
+  for (PotentialTerm& term : potential.terms_) term = term.scaled(factor);
+  return potential;
+}
+
+Potential sum_of(const Potential& one, const Potential& other) {
+  std::vector<PotentialTerm> terms = one.terms();
+  terms.insert(terms.end(), other.terms().begin(), other.terms().end());
+  return {one.touching_nm(), std::move(terms)};
 }
 
 Jet Potential::at(double distance_nm) const {
@@ -168,9 +187,8 @@ PairPotential pair_potential(const PairCurve& curve, const PairFunction& contact
   std::vector<PotentialTerm> terms;
   if (curve.has_contact()) terms = contact_terms(curve, contact, low_gap_nm, high_gap_nm);
   result.dispersion = Potential(touching, {dispersion.term});
-  result.contact = Potential(touching, terms);
-  terms.push_back(dispersion.term);
-  result.total = Potential(touching, std::move(terms));
+  result.contact = Potential(touching, std::move(terms));
+  result.total = sum_of(result.dispersion, result.contact);
   result.dispersion_error = point_error + dispersion.energy_error;
   result.slope_error = slope_error + dispersion.slope_error;
   return result;

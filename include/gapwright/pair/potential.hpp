@@ -24,10 +24,11 @@ class PotentialTerm {
   PotentialTerm(const std::vector<double>& gaps, const std::vector<SmoothEnergy>& points);
 
   Jet at(double gap_nm) const;  ///< derivatives by the gap
+  PotentialTerm scaled(double factor) const;
 
  private:
   bool logarithmic_ = true;
-  double sign_ = 1.0;
+  double factor_ = 1.0;  // the sign, and what scaled() adds
   SlopeSpline spline_;
 };
 
@@ -59,6 +60,9 @@ class Potential {
       : touching_nm_(touching_nm), terms_(std::move(terms)) {}
 
   double touching_nm() const { return touching_nm_; }
+  const std::vector<PotentialTerm>& terms() const { return terms_; }
+  /// All energies times a factor.
+  Potential scaled(double factor) const;
   /// Energy and its derivatives at a distance beyond touching [nm].
   Jet at(double distance_nm) const;
 
@@ -66,6 +70,9 @@ class Potential {
   double touching_nm_ = 0.0;
   std::vector<PotentialTerm> terms_;
 };
+
+/// The sum of two potentials of the same touching distance.
+Potential sum_of(const Potential& one, const Potential& other);
 
 /// The dispersion of a curve and its contact energy, apart and together.
 struct PairPotential {
