@@ -8,6 +8,7 @@ namespace gapwright::cli {
 int describe(const Words& words);
 int bind(const Words& words);
 int rank(const Words& words);
+int table(const Words& words);
 int check(const Words& words);
 
 }  // namespace gapwright::cli

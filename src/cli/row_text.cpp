@@ -36,6 +36,8 @@ std::string csv_value(const FieldValue& value) {
   return {};
 }
 
+}  // namespace
+
 std::string comment_lines(const std::string& comment) {
   std::string lines = "# ";
   for (std::size_t i = 0; i < comment.size(); ++i) {
@@ -44,8 +46,6 @@ std::string comment_lines(const std::string& comment) {
   }
   return lines.ends_with('\n') ? lines : lines + '\n';
 }
-
-}  // namespace
 
 std::string pair_name(const Binding& row) {
   const char* between = row.arrangement == arrangement_word(Arrangement::coaxial) ? "@"

@@ -26,4 +26,7 @@ Json ranked_json(const RankedRow& row);
 /// Comment lines, each led by "# ", a header, and a line a row: rank, all fields, rank_spread.
 std::string ranked_csv(const std::vector<RankedRow>& rows, const std::string& comment);
 
+/// A comment of one or more lines, each led by "# ".
+std::string comment_lines(const std::string& comment);
+
 }  // namespace gapwright::cli

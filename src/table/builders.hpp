@@ -17,7 +17,7 @@ Table begin_table(const Binder& binder, const TableRequest& request);
 
 /// Two parallel tubes from the table's first distance to its last, or further.
 PairPotential parallel_potential(const Binder& binder, const TableRequest& request,
-                                 const Table& table, double farthest_gap_nm);
+                                 const Table& table, double reach_gap_nm);
 
 /// The function itself, or with the table's outer cut.
 EnergyFunction with_cut(EnergyFunction function, const Table& table);

@@ -36,8 +36,9 @@ class CrossedWork {
     const Potential contact = contact_sine();
     std::vector<AngleEnergy> all = {limit(contact)};
     for (const double angle : request_.angles_deg) all.push_back(at_angle(angle, further, contact));
-    table_.dispersion_error += further.error();
-    table_.slope_error += further.error();
+    table_.dispersion_error =
+        std::max(table_.dispersion_error, further.point_error()) + further.between_error();
+    table_.slope_error += further.point_error() + further.between_error();
     for (AngleEnergy& energy : all) {
       const EnergyFunction bare = [potential = energy.sine](double distance) {
         return potential.at(distance);

@@ -15,6 +15,11 @@ constexpr std::array places = {0.2113, 0.5, 0.7887};
 // Steps grow no faster than this, so that splines through a column do not suffer.
 constexpr double largest_growth = 1.3;
 
+double on_grain(double distance) {
+  constexpr double grains = 1 / distance_grain_nm;
+  return std::round(distance * grains) / grains;  // the number nearest to the decimal one
+}
+
 TablePoint point_at(const EnergyFunction& function, double distance) {
   const Jet jet = function(distance);
   return {distance, jet.value, -jet.slope};
@@ -50,7 +55,7 @@ std::vector<TablePoint> march(const EnergyFunction& function, double low, double
                               const TableScale& scale, double tolerance) {
   std::vector<TablePoint> points = {point_at(function, low)};
   double step = std::min(0.01, 0.1 * (high - low));
-  const double shortest = 1e-9 * (high - low);
+  const double shortest = 4 * distance_grain_nm;
   while (points.back().distance_nm < high) {
     const TablePoint& last = points.back();
     step *= largest_growth;
@@ -59,7 +64,7 @@ std::vector<TablePoint> march(const EnergyFunction& function, double low, double
       // The rest in one step or two, none of them tiny.
       const double left = high - last.distance_nm;
       const double here = step >= left ? left : step > 0.6 * left ? 0.5 * left : step;
-      next = point_at(function, here == left ? high : last.distance_nm + here);
+      next = point_at(function, here == left ? high : on_grain(last.distance_nm + here));
       if (here < shortest || good_between(function, last, next, scale, tolerance)) break;
     }
     points.push_back(next);

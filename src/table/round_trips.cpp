@@ -1,6 +1,7 @@
 #include "round_trips.hpp"
 
 #include <gapwright/catalog/constants.hpp>
+#include <gapwright/join/crossed.hpp>
 #include <gapwright/table/beads.hpp>
 
 #include <algorithm>
@@ -11,16 +12,14 @@ namespace gapwright {
 namespace {
 
 constexpr std::array angle_nodes_deg = {15.0, 30.0, 60.0, 90.0};
-constexpr double no_angle = -1.0;
-
 double sine_of(double angle_deg) {
   return std::sin(angle_deg * constants::pi / 180);
 }
 
-/// Five gaps for a factor of 50: a factor of 2.7 from one to the next.
+/// Six gaps for a factor of 50.
 std::vector<double> coarse_gaps(double low, double high) {
   const double span = std::log(high / low);
-  const int count = std::max(4, int(std::lround(span)) + 1);
+  const int count = std::max(4, int(std::lround(span / 0.8)) + 1);
   std::vector<double> gaps;
   for (int i = 0; i < count; ++i) gaps.push_back(low * std::exp(span * i / (count - 1)));
   gaps.back() = high;
@@ -33,56 +32,69 @@ std::unique_ptr<PairCurve> crossed_curve(const Binder& binder, const TableReques
       {Arrangement::crossed, request.first, request.second, std::nullopt, angle_deg});
 }
 
-SmoothEnergy ratio_at(const CurvePoint& point) {
-  const double value = point.energy.value / point.first_round_trip;
-  return {value, (point.slope.value - value * point.first_slope) / point.first_round_trip};
+/// Angles from here up stand on the grid of two wave numbers at a gap.
+double lowest_node_deg(const TableRequest& request, double gap) {
+  const double one = tubes_of(request.first).walls.back().radius_nm;
+  const double other = tubes_of(request.second).walls.back().radius_nm;
+  return lowest_grid_angle_deg(one, other, one + other + gap);
+}
+
+/// The polynomial in sin γ through all nodes but one.
+SmoothEnergy between(const std::map<double, SmoothEnergy>& nodes, double angle_deg,
+                     std::optional<double> left_out_deg) {
+  SmoothEnergy sum;
+  const double s = sine_of(angle_deg);
+  for (const auto& [node, ratio] : nodes) {
+    if (node == left_out_deg) continue;
+    double weight = 1.0;
+    for (const auto& [other, unused] : nodes)
+      if (other != node && other != left_out_deg)
+        weight *= (s - sine_of(other)) / (sine_of(node) - sine_of(other));
+    sum.energy += weight * ratio.energy;
+    sum.slope += weight * ratio.slope;
+  }
+  return sum;
+}
+
+/// True when all wanted angles are nodes at every gap: then they need no others.
+bool are_nodes(const std::vector<double>& wanted, double lowest) {
+  return std::all_of(wanted.begin(), wanted.end(), [&](double angle) {
+    return angle >= lowest && std::find(angle_nodes_deg.begin(), angle_nodes_deg.end(), angle) !=
+                                  angle_nodes_deg.end();
+  });
 }
 
 }  // namespace
 
 FurtherRoundTrips::FurtherRoundTrips(const Binder& binder, const TableRequest& request,
                                      double low_gap_nm, double high_gap_nm)
-    : gaps_(coarse_gaps(low_gap_nm, high_gap_nm)) {
+    : gaps_(coarse_gaps(low_gap_nm, high_gap_nm)), nodes_(gaps_.size()) {
+  add_angles(binder, request);
+  if (!are_nodes(request.angles_deg, lowest_node_deg(request, gaps_.front())))
+    add_limit(binder, request);
+  read_angles(request.angles_deg);
+  check_gaps(binder, request);
+}
+
+SmoothEnergy FurtherRoundTrips::computed(const PairCurve& curve, double gap_nm) {
+  const CurvePoint point = curve.dispersion(gap_nm, true);
+  point_errors_.push_back(point.energy.error / std::fabs(point.energy.value));
+  positive_ = positive_ && point.positive;
+  const double value = point.energy.value / point.first_round_trip;
+  return {value, (point.slope.value - value * point.first_slope) / point.first_round_trip};
+}
+
+void FurtherRoundTrips::add_angles(const Binder& binder, const TableRequest& request) {
   const std::vector<double>& wanted = request.angles_deg;
-  const auto is_node = [](double angle) {
-    return std::find(angle_nodes_deg.begin(), angle_nodes_deg.end(), angle) !=
-           angle_nodes_deg.end();
-  };
-  const bool nodes_only = std::all_of(wanted.begin(), wanted.end(), is_node);
-  for (const double angle : angle_nodes_deg)
-    if (!nodes_only || std::count(wanted.begin(), wanted.end(), angle) > 0)
-      add_angle(binder, request, angle);
-  check_gaps(binder, request, at_angle_.rbegin()->first);
-  if (nodes_only) return;
-  add_limit(binder, request);
-  check_angles(wanted);
-}
-
-void FurtherRoundTrips::add_angle(const Binder& binder, const TableRequest& request,
-                                  double angle_deg) {
-  const auto curve = crossed_curve(binder, request, angle_deg);
-  curve->announce(gaps_.front());
-  std::vector<SmoothEnergy> ratios;
-  for (const double gap : gaps_) {
-    const CurvePoint point = curve->dispersion(gap, true);
-    error_ = std::max(error_, point.energy.error / std::fabs(point.energy.value));
-    positive_ = positive_ && point.positive;
-    ratios.push_back(ratio_at(point));
+  const bool all = !are_nodes(wanted, lowest_node_deg(request, gaps_.front()));
+  for (const double angle : angle_nodes_deg) {
+    if (!all && std::find(wanted.begin(), wanted.end(), angle) == wanted.end()) continue;
+    const auto curve = crossed_curve(binder, request, angle);
+    curve->announce(gaps_.front());
+    for (std::size_t i = 0; i < gaps_.size(); ++i)
+      if (angle >= lowest_node_deg(request, gaps_[i]))
+        nodes_[i][angle] = computed(*curve, gaps_[i]);
   }
-  at_angle_.emplace(angle_deg, PotentialTerm(gaps_, ratios));
-}
-
-// At the widest angle, the cheapest one: the ratios of all angles bend alike.
-void FurtherRoundTrips::check_gaps(const Binder& binder, const TableRequest& request,
-                                   double angle_deg) {
-  const auto curve = crossed_curve(binder, request, angle_deg);
-  double off = 0.0;
-  for (std::size_t i = 1; i < gaps_.size(); ++i) {
-    const double gap = std::sqrt(gaps_[i - 1] * gaps_[i]);
-    const double wanted = ratio_at(curve->dispersion(gap, true)).energy;
-    off = std::max(off, std::fabs(at_angle_.at(angle_deg).at(gap).value - wanted));
-  }
-  error_ += off;
 }
 
 void FurtherRoundTrips::add_limit(const Binder& binder, const TableRequest& request) {
@@ -93,51 +105,60 @@ void FurtherRoundTrips::add_limit(const Binder& binder, const TableRequest& requ
     return pair_potential(*curve, {}, low, high, binder.settings().tolerance, trips).dispersion;
   };
   const Potential all = parallel(RoundTrips::all), first = parallel(RoundTrips::first);
-  std::vector<SmoothEnergy> ratios;
-  for (const double gap : gaps_) {
+  for (std::size_t i = 0; i < gaps_.size(); ++i) {
     const auto limit = [&](const Potential& potential) {
       return crossing_limit([&](double distance) { return potential.at(distance); },
-                            curve->touching_nm() + gap);
+                            curve->touching_nm() + gaps_[i]);
     };
     const Jet full = limit(all), once = limit(first);
     const double value = full.value / once.value;
-    ratios.push_back({value, (full.slope - value * once.slope) / once.value});
+    nodes_[i][0.0] = {value, (full.slope - value * once.slope) / once.value};
   }
-  at_angle_.emplace(0.0, PotentialTerm(gaps_, ratios));
 }
 
-// Leaving out one inner node and coming back to it is worse than what is left between all of them.
-void FurtherRoundTrips::check_angles(const std::vector<double>& wanted) {
+// The lowest node between limit and 90° left out and read back is off by several times what the
+// angles between all nodes are.
+void FurtherRoundTrips::read_angles(const std::vector<double>& wanted) {
   double off = 0.0;
-  for (const double angle : wanted)
-    for (const double gap : gaps_)
-      off = std::max(off, std::fabs(between(angle, gap, no_angle).energy -
-                                    between(angle, gap, angle_nodes_deg[0]).energy));
-  error_ += 0.3 * off;
+  for (const double angle : wanted) {
+    std::vector<SmoothEnergy> ratios;
+    for (const Nodes& nodes : nodes_) {
+      ratios.push_back(between(nodes, angle, std::nullopt));
+      if (nodes.contains(angle) || nodes.size() < 3) continue;
+      const SmoothEnergy coarser = between(nodes, angle, std::next(nodes.begin())->first);
+      off = std::max(off, std::fabs(ratios.back().energy - coarser.energy));
+    }
+    at_angle_.emplace(angle, PotentialTerm(gaps_, ratios));
+  }
+  between_error_ += 0.3 * off;
 }
 
-// The polynomial in sin γ through all nodes but one.
-SmoothEnergy FurtherRoundTrips::between(double angle_deg, double gap_nm,
-                                        double left_out_deg) const {
-  SmoothEnergy sum;
-  const double s = sine_of(angle_deg);
-  for (const auto& [node, term] : at_angle_) {
-    if (node == left_out_deg) continue;
-    double weight = 1.0;
-    for (const auto& [other, unused] : at_angle_)
-      if (other != node && other != left_out_deg)
-        weight *= (s - sine_of(other)) / (sine_of(node) - sine_of(other));
-    const Jet ratio = term.at(gap_nm);
-    sum.energy += weight * ratio.value;
-    sum.slope += weight * ratio.slope;
+// At the widest node, the cheapest one: the ratios of all angles bend alike.
+void FurtherRoundTrips::check_gaps(const Binder& binder, const TableRequest& request) {
+  const double angle = nodes_.front().rbegin()->first;
+  std::vector<SmoothEnergy> ratios;
+  for (const Nodes& nodes : nodes_) ratios.push_back(nodes.at(angle));
+  const PotentialTerm term(gaps_, ratios);
+  const auto curve = crossed_curve(binder, request, angle);
+  double off = 0.0;
+  for (std::size_t i = 1; i < gaps_.size(); ++i) {
+    const double gap = std::sqrt(gaps_[i - 1] * gaps_[i]);
+    off = std::max(off, std::fabs(term.at(gap).value - computed(*curve, gap).energy));
   }
-  return sum;
+  between_error_ += off;
+}
+
+// Each estimate compares two coarse grids by chance nodes and is now and then ten times too large,
+// while the ratios lie on a smooth curve to between_error(): the median tells.
+double FurtherRoundTrips::point_error() const {
+  std::vector<double> errors = point_errors_;
+  const auto middle = errors.begin() + std::ptrdiff_t(errors.size() / 2);
+  std::nth_element(errors.begin(), middle, errors.end());
+  return *middle;
 }
 
 SmoothEnergy FurtherRoundTrips::ratio(double angle_deg, double gap_nm) const {
-  const auto node = at_angle_.find(angle_deg);
-  if (node == at_angle_.end()) return between(angle_deg, gap_nm, no_angle);
-  const Jet ratio = node->second.at(gap_nm);
+  const Jet ratio = at_angle_.at(angle_deg).at(gap_nm);
   return {ratio.value, ratio.slope};
 }
 

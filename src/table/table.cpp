@@ -1,6 +1,7 @@
 #include "builders.hpp"
 
 #include <algorithm>
+#include <cmath>
 #include <memory>
 #include <stdexcept>
 
@@ -26,6 +27,16 @@ std::string_view force_unit(TableKind kind) {
   return kind == TableKind::parallel ? "eV/nm2" : "eV/nm";
 }
 
+namespace {
+
+// Distances of our own choice are whole multiples of this.
+double rounded_up(double distance_nm) {
+  constexpr double grains = 1 / distance_grain_nm;
+  return std::ceil(distance_nm * grains) / grains;
+}
+
+}  // namespace
+
 Table begin_table(const Binder& binder, const TableRequest& request) {
   check_request(request);
   const Tube &one = tubes_of(request.first).walls.back(),
@@ -39,22 +50,23 @@ Table begin_table(const Binder& binder, const TableRequest& request) {
   table.touching_nm = one.radius_nm + other.radius_nm;
   table.settings = binder.settings();
   table.tolerance = table.settings.tolerance;
+  const double first = table.touching_nm + min_gap_nm, last = table.touching_nm + last_gap_nm;
+  table.first_nm = request.inner_cut_nm.value_or(rounded_up(first));
   table.outer_cut_nm = request.outer_cut_nm;
   if (request.kind == TableKind::beads && !table.outer_cut_nm)
-    table.outer_cut_nm = table.touching_nm + last_gap_nm;
-  table.first_nm = request.inner_cut_nm.value_or(table.touching_nm + min_gap_nm);
-  table.last_nm =
-      table.outer_cut_nm.value_or(std::max(table.touching_nm, table.first_nm) + last_gap_nm);
+    table.outer_cut_nm = rounded_up(std::max(last, table.first_nm + last_gap_nm / 2));
+  table.last_nm = table.outer_cut_nm.value_or(
+      rounded_up(table.first_nm < last - last_gap_nm / 2 ? last : table.first_nm + last_gap_nm));
   return table;
 }
 
 PairPotential parallel_potential(const Binder& binder, const TableRequest& request,
-                                 const Table& table, double farthest_gap_nm) {
+                                 const Table& table, double reach_gap_nm) {
   const auto curve =
       binder.curve({Arrangement::parallel, request.first, request.second, std::nullopt});
   const double first = table.first_nm - table.touching_nm, last = table.last_nm - table.touching_nm;
   return pair_potential(*curve, binder.contact_term(table.settings.contact_target), first,
-                        std::max(last, farthest_gap_nm), table.tolerance);
+                        std::max(last, reach_gap_nm), table.tolerance);
 }
 
 EnergyFunction with_cut(EnergyFunction function, const Table& table) {

@@ -41,6 +41,9 @@ struct PlacedPoints {
   ReadingError error;
 };
 
+/// Distances between the ends are whole multiples of this, short to print [nm].
+inline constexpr double distance_grain_nm = 1e-6;
+
 /// As few points as the tolerance allows, both ends among them. Throws std::domain_error unless
 /// low < high and 1e-8 <= tolerance <= 0.1.
 PlacedPoints place_points(const EnergyFunction& function, double low_nm, double high_nm,
