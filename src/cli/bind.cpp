@@ -1,5 +1,6 @@
 #include "bind_request.hpp"
 #include "binding_text.hpp"
+#include "bundle.hpp"
 #include "commands.hpp"
 #include "distance_table.hpp"
 #include "exit_code.hpp"
@@ -54,6 +55,7 @@ void print_notes(const std::vector<Binding>& rows) {
 int bind(const Words& words) {
   const Catalogs catalogs = load_catalogs(words);
   const Settings settings = read_settings(words, catalogs);
+  if (words.flag("--bundle")) return bind_bundle(words, catalogs, settings);
   const BindRequest request = read_bind_request(words, catalogs);
   const std::vector<Binding> rows = at_bind_options([&] {
     const Binder binder(catalogs, settings);

@@ -50,6 +50,7 @@ const std::vector<CommandText>& commands() {
         {"--in", "LIQUID", "In a liquid such as water (default vacuum); dispersion only"},
         {"--gap-nm", "X", "Gap between the two (default: the bottom of the well)"},
         {"--distances", "LO:HI", "A table over the gap, evenly spaced in its logarithm"},
+        {"--bundle", "", "A hexagonal bundle of one tube: lattice constant, energy per tube"},
         {"--retarded", "", "Two walls A@B: fields travel at the speed of light"}}},
       {"rank",
        "[PLAN.toml]",

@@ -112,7 +112,8 @@ void read_form(const Words& words, TableJob& job) {
   job.layout = Layout::from_file(*file, job.request.kind);
   std::ifstream stream(*file, std::ios::binary);
   job.layout_text.assign(std::istreambuf_iterator<char>(stream), {});
-  job.extension = std::filesystem::path(*file).extension().string();
+  // records.dat.template makes files .dat.
+  job.extension = std::filesystem::path(*file).stem().extension().string();
   if (job.extension.size() < 2) job.extension = ".txt";
 }
 

@@ -148,13 +148,15 @@ void FurtherRoundTrips::check_gaps(const Binder& binder, const TableRequest& req
   between_error_ += off;
 }
 
-// Each estimate compares two coarse grids by chance nodes and is now and then ten times too large,
-// while the ratios lie on a smooth curve to between_error(): the median tells.
+// An estimate compares the grid of a point with one twice as coarse, whose own error swings with
+// where its nodes fall against the gap, from nothing to many times that of the full grid. The
+// latter swings as well, and would show in between_error(), which finds the ratios on a smooth
+// curve. So the lower quartile counts.
 double FurtherRoundTrips::point_error() const {
   std::vector<double> errors = point_errors_;
-  const auto middle = errors.begin() + std::ptrdiff_t(errors.size() / 2);
-  std::nth_element(errors.begin(), middle, errors.end());
-  return *middle;
+  const auto quartile = errors.begin() + std::ptrdiff_t(errors.size() / 4);
+  std::nth_element(errors.begin(), quartile, errors.end());
+  return *quartile;
 }
 
 SmoothEnergy FurtherRoundTrips::ratio(double angle_deg, double gap_nm) const {
