@@ -73,7 +73,8 @@ Object one_tube(const Words& words) {
                       {},
                       "one object, such as 10,10",
                       words.operands.empty() ? "" : words.operands.front()});
-  for (const char* option : {"--gap-nm", "--parallel", "--crossed", "--over"})
+  for (const char* option :
+       {"--gap-nm", "--parallel", "--crossed", "--over", "--distances", "--in", "--retarded"})
     if (words.has(option) || words.flag(option))
       throw InputError({"does not go with --bundle",
                         option,

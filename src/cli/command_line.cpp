@@ -84,6 +84,7 @@ const std::vector<CommandText>& commands() {
         {"--crossed", "DEG,...", "Across each other at these angles"},
         {"--beads", "", "Tubes as chains of beads: energy of two beads"},
         {"--spacing-nm", "L", "Spacing of the beads (default 0.25 times the root of the distance)"},
+        {"--in", "LIQUID", "In a liquid such as water (default vacuum); dispersion only"},
         {"--inner-cut-nm", "D", "Closest distance of the axes (default: the gap 0.2 nm)"},
         {"--outer-cut-nm", "D", "Distance at which a smooth switch ends energy and force"},
         {"--csv", "FILE", "CSV into this file; - for standard output (the default)"},

@@ -28,21 +28,26 @@ void write_one(const TableJob& job, const Table& table, const Catalogs& catalogs
       note(fmt::format("{} rows are in {}", table.rows.size(), file->string()));
 }
 
+int one_pair(const TableJob& job, const Binder& binder) {
+  const Table table = make_table(binder, job.request);
+  if (table.status == Status::ok || table.status == Status::not_converged)
+    write_one(job, table, binder.catalogs());
+  if (table.status == Status::ok) return good;
+  note(fmt::format("gapwright: {} {}: {}, {}", table.object_1, table.object_2,
+                   status_word(table.status), table.message));
+  return some_failed;
+}
+
 }  // namespace
 
 int table(const Words& words) {
   const Catalogs catalogs = load_catalogs(words);
   const Settings settings = read_settings(words, catalogs);
   const TableJob job = read_table_job(words);
-  const Binder binder(catalogs, settings);
-  if (!job.series.empty()) return write_series(job, binder);
-  const Table table = make_table(binder, job.request);
-  if (table.status == Status::ok || table.status == Status::not_converged)
-    write_one(job, table, catalogs);
-  if (table.status == Status::ok) return good;
-  note(fmt::format("gapwright: {} {}: {}, {}", table.object_1, table.object_2,
-                   status_word(table.status), table.message));
-  return some_failed;
+  return at_table_options([&] {
+    const Binder binder(catalogs, settings);
+    return job.series.empty() ? one_pair(job, binder) : write_series(job, binder);
+  });
 }
 
 }  // namespace gapwright::cli

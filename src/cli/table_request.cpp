@@ -5,7 +5,6 @@
 #include <gapwright/lattice/candidates.hpp>
 
 #include <algorithm>
-#include <array>
 #include <charconv>
 #include <cmath>
 #include <fstream>
@@ -160,17 +159,13 @@ void read_places(const Words& words, TableJob& job) {
 
 }  // namespace
 
-void check_pair(const TableRequest& request) {
-  constexpr std::array members = {"inner_cut_nm", "outer_cut_nm", "angles_deg", "spacing_nm"};
-  constexpr std::array options = {"--inner-cut-nm", "--outer-cut-nm", "--crossed", "--spacing-nm"};
-  try {
-    check_request(request);
-  } catch (const InputError& error) {
-    InputError::Parts parts = error.parts();
-    for (std::size_t i = 0; i < members.size(); ++i)
-      if (parts.where == members[i]) parts.where = options[i];
-    throw InputError(parts);
-  }
+std::string option_of(const std::string& member) {
+  if (member == "inner_cut_nm") return "--inner-cut-nm";
+  if (member == "outer_cut_nm") return "--outer-cut-nm";
+  if (member == "angles_deg") return "--crossed";
+  if (member == "spacing_nm") return "--spacing-nm";
+  if (member == "medium") return "--in";
+  return member;
 }
 
 TableJob read_table_job(const Words& words) {
@@ -182,7 +177,7 @@ TableJob read_table_job(const Words& words) {
   request.outer_cut_nm = words.number("--outer-cut-nm", distances);
   request.spacing_nm = words.number("--spacing-nm", {0, 20, "nm"});
   read_objects(words, job);
-  if (job.series.empty()) check_pair(request);
+  if (job.series.empty()) at_table_options([&] { check_request(request); });
   read_form(words, job);
   read_places(words, job);
   return job;

@@ -26,10 +26,22 @@ struct TableJob {
   std::optional<std::filesystem::path> output;  ///< a file; of a series a folder
 };
 
+/// The option that sets a member; the word itself when there is none.
+std::string option_of(const std::string& member);
+
 /// Throws InputError, naming the option, for everything that is wrong before any energy is known.
 TableJob read_table_job(const Words& words);
 
-/// check_request, with messages that name the options.
-void check_pair(const TableRequest& request);
+/// Runs what knows members of a request or of settings, and names their options in its messages.
+template <typename Check>
+auto at_table_options(Check&& check) {
+  try {
+    return check();
+  } catch (const InputError& error) {
+    InputError::Parts parts = error.parts();
+    parts.where = option_of(parts.where);
+    throw InputError(parts);
+  }
+}
 
 }  // namespace gapwright::cli

@@ -47,7 +47,7 @@ std::vector<Planned> planned(const TableJob& job, const Binder& binder) {
     for (std::size_t j = i; j < job.series.size(); ++j) {
       request.first = job.series[i];
       request.second = job.series[j];
-      check_pair(request);
+      check_request(request);
       requests.push_back(request);
     }
   // A tube has the same beads whatever it meets: those of the closest pair.

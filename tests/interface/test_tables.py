@@ -3,6 +3,7 @@
 import csv
 import io
 import json
+import shlex
 import signal
 import subprocess
 import time
@@ -234,6 +235,41 @@ class Series(harness.Case):
         self.good("table", "--tubes", "0.6:0.62", "--outer-cut-nm", 3, "--output", folder)
         changed = [name for name, text in kept.items() if (folder / name).read_text() != text]
         self.assertTrue(changed)
+
+
+class Readme(harness.Case):
+    """What README says about tables is what happens."""
+
+    def section(self):
+        text = (EXAMPLES.parent / "README.md").read_text("utf-8")
+        return text.split("## Tables for a simulation\n")[1].split("\n## ")[0]
+
+    def test_commands(self):
+        commands = [line.strip() for line in self.section().splitlines()
+                    if line.startswith("    build/gapwright ")]
+        self.assertGreater(len(commands), 3)
+        for command in commands:
+            words = shlex.split(command.split("   ")[0])[1:]
+            self.good(*words, "--tolerance", "1e-3", cwd=self.folder)
+        self.assertEqual(sorted(file.name for file in self.path("network").iterdir()),
+                         ["10-10_10-10.csv", "17-0_10-10.csv", "17-0_17-0.csv", "index.csv"])
+        self.assertTrue(self.path("pair.csv").exists())
+
+    def test_template_and_its_fields(self):
+        block = self.section().split("    # comments stand")[1].split("\n\n")[0]
+        text = "\n".join(line[4:] for line in block.splitlines()[1:])
+        lines = self.good(*PAIR, "--template", self.path("t", text + "\n")).stdout.splitlines()
+        self.assertEqual((lines[0][:20], lines[-1]), ("(10,10) and (17,0), ", "end"))
+        fields = [name.strip() for line in self.section().splitlines()
+                  if line.startswith("| ") and not line.startswith("| field")
+                  for name in line.split("|")[1].split(",")]
+        every = "[row]\n" + " ".join("{%s}" % name for name in fields) + "\n"
+        self.good("table", "6,5", "7,5", "--crossed", "90", "--tolerance", "1e-3", "--template",
+                  self.path("all", every))
+        # The program knows no field that README does not tell.
+        done = self.refused([*PAIR, "--template", self.path("no", "[row]\n{x}\n")], "one of ")
+        known = done.stderr.split("one of ")[1].split("\n")[0].split(", ")
+        self.assertEqual(sorted(known), sorted(fields))
 
 
 class Bundles(harness.Case):

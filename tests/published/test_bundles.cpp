@@ -64,7 +64,7 @@ TEST_CASE("a bundle is the sum of its pairs") {
   CHECK_THROWS_AS(hexagonal_bundle(binder(), tube("graphene")), InputError);
 }
 
-// Reference values of the model (METHODS §9).
+// Reference values of the model (METHODS §10).
 TEST_CASE("beads of (10,10) pairs") {
   const auto curve = binder().curve({Arrangement::parallel, tube("10,10"), tube("10,10"), {}});
   const PairFunction contact = binder().contact_term(binder().settings().contact_target);

@@ -1,4 +1,4 @@
-// Hexagonal bundles of one kind of tube, as the sum of their parallel pairs (METHODS §9).
+// Hexagonal bundles of one kind of tube, as the sum of their parallel pairs (METHODS §10).
 #pragma once
 
 #include <gapwright/pair/binder.hpp>

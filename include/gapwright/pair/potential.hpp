@@ -15,7 +15,7 @@ namespace gapwright {
 using GapFunction = std::function<SmoothEnergy(double gap_nm)>;
 
 /// One addend of a potential: a quintic spline in ln g of ln|E|, or of E·g⁴ where E changes sign,
-/// through energies and exact slopes (METHODS §9). Beyond its last knot it goes on as a power of
+/// through energies and exact slopes (METHODS §10). Beyond its last knot it goes on as a power of
 /// the gap.
 class PotentialTerm {
  public:

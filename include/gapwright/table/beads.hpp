@@ -1,4 +1,4 @@
-// A tube as a chain of beads (METHODS §9).
+// A tube as a chain of beads (METHODS §10).
 #pragma once
 
 #include <gapwright/table/placing.hpp>

@@ -12,7 +12,7 @@ inline constexpr double switch_begin = 0.8;
 /// curvature stays empty.
 Jet outer_switch(double distance_nm, double cut_nm);
 
-/// The function with the switch on its force, -S·dE/dD (METHODS §9): forces below 0.8 r_c stay
+/// The function with the switch on its force, -S·dE/dD (METHODS §10): forces below 0.8 r_c stay
 /// as they are, energies move by one constant, and both end at zero at r_c.
 class OuterCut {
  public:

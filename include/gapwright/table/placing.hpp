@@ -1,4 +1,4 @@
-// Points of a table, placed so that a cubic reading of it is good enough (METHODS §9).
+// Points of a table, placed so that a cubic reading of it is good enough (METHODS §10).
 #pragma once
 
 #include <gapwright/math/slope_spline.hpp>

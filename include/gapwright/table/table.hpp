@@ -1,4 +1,4 @@
-// Energy and force tables of two tubes for simulations (METHODS §9).
+// Energy and force tables of two tubes for simulations (METHODS §10).
 #pragma once
 
 #include <gapwright/pair/binder.hpp>
