@@ -43,6 +43,21 @@ double sum_error(const BeadPair& beads, const EnergyFunction& parallel,
   return largest;
 }
 
+/// Points whose beads sum up to the tolerance, too: far beads are weak beside the well, but many.
+PlacedPoints placed_beads(const BeadPair& beads, const EnergyFunction& parallel, Table& table) {
+  const EnergyFunction function = [&](double distance) { return beads.at(distance); };
+  const TableScale scale = table_scale(function, table.first_nm, table.last_nm);
+  PlacedPoints placed;
+  double aim = table.tolerance;
+  for (int round = 0; round < 4; ++round) {
+    placed = place_points(function, table.first_nm, table.last_nm, scale, std::max(aim, 1e-8));
+    table.bead_sum_error = sum_error(beads, parallel, placed.points, table);
+    if (*table.bead_sum_error <= table.tolerance) break;
+    aim *= std::min(0.5, 0.7 * table.tolerance / *table.bead_sum_error);
+  }
+  return placed;
+}
+
 std::vector<CrossingRow> crossings(const Binder& binder, const TableRequest& request,
                                    const Table& table, const Potential& dispersion) {
   const auto curve =
@@ -84,17 +99,13 @@ Table bead_table(const Binder& binder, const TableRequest& request) {
   table.spacing_nm = spacing;
 
   const BeadPair beads(parallel, spacing, spacing, table.first_nm, table.outer_cut_nm);
-  const EnergyFunction function = [&](double distance) { return beads.at(distance); };
-  const TableScale scale = table_scale(function, table.first_nm, table.last_nm);
-  const PlacedPoints placed =
-      place_points(function, table.first_nm, table.last_nm, scale, table.tolerance);
+  const PlacedPoints placed = placed_beads(beads, parallel, table);
   for (const TablePoint& point : placed.points)
     table.rows.push_back(
         {.distance_nm = point.distance_nm, .energy = point.energy, .force = point.force});
   table.reading_error = placed.error;
   table.closest_energy = placed.points.front().energy;
   table.closest_force = placed.points.front().force;
-  table.bead_sum_error = sum_error(beads, parallel, placed.points, table);
   if (table.well_distance_nm)
     table.sliding = sliding(beads, *table.well_distance_nm, spacing, widest);
   table.crossing = crossings(binder, request, table, potential.dispersion);

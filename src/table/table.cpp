@@ -101,7 +101,8 @@ void note_too_close(Table& table) {
 
 void judge(Table& table) {
   if (table.status != Status::ok) return;
-  const double reading = std::max(table.reading_error.energy, table.reading_error.force);
+  const double reading = std::max(
+      {table.reading_error.energy, table.reading_error.force, table.bead_sum_error.value_or(0.0)});
   if (table.dispersion_error <= table.tolerance && reading <= table.tolerance) return;
   table.status = Status::not_converged;
   table.message = "an error exceeds the tolerance";
