@@ -7,6 +7,7 @@
 #include <gapwright/response/ribbon_response.hpp>
 
 #include <algorithm>
+#include <cmath>
 #include <stdexcept>
 #include <utility>
 
@@ -48,6 +49,31 @@ std::vector<double> nodes_of(const LogLattice& lattice, IndexRange range) {
   std::vector<double> values;
   for (int i = 0; i < range.count; ++i) values.push_back(lattice.node(range.first + i));
   return values;
+}
+
+/// What free carriers would add to Σχ(q, 0) = -c q², their n/kT at the longest wave, relative.
+/// Throws InputError where that is more than a tenth of the tolerance: the sums hold for empty
+/// conduction and full valence bands.
+double carrier_error(const RibbonHamiltonian& hamiltonian, const StateGrid& grid, double gap_eV,
+                     const Conditions& conditions, double longest_wave_per_nm, double tolerance) {
+  constexpr double share = 0.1;
+  const double mu = conditions.chemical_potential_eV, kT = thermal_energy_eV(conditions);
+  const Ribbon& ribbon = hamiltonian.ribbon();
+  const bool doped = std::abs(mu) >= 0.5 * gap_eV;
+  double error = 0;
+  if (kT > 0 && !doped)
+    error = few_carriers_per_nm(grid, ribbon.period_nm(), kT, mu) /
+            (kT * grid.static_polarisability * longest_wave_per_nm * longest_wave_per_nm);
+  if (!doped && error <= share * tolerance) return error;
+  throw InputError(
+      {fmt::format("{} has free carriers at {} K and a chemical potential of {} eV", ribbon.label(),
+                   conditions.temperature_K, mu),
+       {},
+       {},
+       fmt::format("a ribbon of empty bands: its gap is {:.3g} eV, and the response of "
+                   "free carriers in ribbons is not computed",
+                   gap_eV),
+       doped ? "0 eV" : "0 K"});
 }
 
 /// A uniform potential moves nothing, Σ_j' χ_jj'(0) = 0: what rounding leaves of the sums,
@@ -109,8 +135,12 @@ void RibbonResponse::matrix(int i, int k, std::span<double> out) const {
 RibbonResponse ribbon_response(const RibbonHamiltonian& hamiltonian, const Conditions& conditions,
                                const Nodes& nodes, IndexRange q, IndexRange xi) {
   validate(conditions);
+  if (q.count < 1 || xi.count < 1)
+    throw std::invalid_argument("ribbon_response: nodes in q and xi are required");
   const double gap = computable_gap_eV(hamiltonian);
   const StateGrid grid = settled_states(hamiltonian, waves_share * nodes.tolerance, most_waves);
+  const double carriers =
+      carrier_error(hamiltonian, grid, gap, conditions, nodes.q.node(q.first), nodes.tolerance);
   const TimeGrid times = time_grid(gap * (1 - 1e-6), 2 * grid.largest_energy_eV * (1 + 1e-6),
                                    nodes_of(nodes.xi, xi), times_share * nodes.tolerance);
 
@@ -118,7 +148,7 @@ RibbonResponse ribbon_response(const RibbonHamiltonian& hamiltonian, const Condi
   RibbonResponse response(hamiltonian.ribbon(), nodes, q, xi);
   response.waves = grid.waves;
   response.times = static_cast<int>(times.times.size());
-  response.relative_error = grid.relative_error + times.relative_error;
+  response.relative_error = grid.relative_error + times.relative_error + carriers;
 
   const auto pairs = static_cast<Eigen::Index>(response.pairs());
   std::vector<Eigen::MatrixXd> at_times(times.times.size());

@@ -98,6 +98,19 @@ double polarisability(const RibbonHamiltonian& hamiltonian, const StateGrid& gri
 
 }  // namespace
 
+double few_carriers_per_nm(const StateGrid& grid, double period_nm, double thermal_energy_eV,
+                           double chemical_potential_eV) {
+  double sum = 0;
+  for (std::size_t i = 0; i < grid.states.size(); ++i) {
+    const double twins = i == 0 || i + 1 == grid.states.size() ? 1 : 2;
+    for (const ConductionStates& s : grid.states[i])
+      sum += twins * ((std::abs(chemical_potential_eV) - s.energies_eV.array()) / thermal_energy_eV)
+                         .exp()
+                         .sum();
+  }
+  return 4 * sum / (grid.waves * period_nm);
+}
+
 StateGrid settled_states(const RibbonHamiltonian& hamiltonian, double relative_error,
                          int most_waves) {
   StateGrid grid;

@@ -28,4 +28,9 @@ struct StateGrid {
 StateGrid settled_states(const RibbonHamiltonian& hamiltonian, double relative_error,
                          int most_waves);
 
+/// Electrons and holes per nm at kT > 0 in the limit of few, the chemical potential from mid-gap;
+/// an upper bound: 2 Σ_n ∫dk/2π 2e^{-(E_n - |μ|)/kT}.
+double few_carriers_per_nm(const StateGrid& grid, double period_nm, double thermal_energy_eV,
+                           double chemical_potential_eV);
+
 }  // namespace gapwright

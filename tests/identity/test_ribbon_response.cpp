@@ -3,6 +3,7 @@
 
 #include <gapwright/catalog/catalogs.hpp>
 #include <gapwright/catalog/input_error.hpp>
+#include <gapwright/response/conditions.hpp>
 #include <gapwright/response/ribbon_response.hpp>
 
 #include <catch2/catch.hpp>
@@ -145,8 +146,34 @@ TEST_CASE("ribbons that are not computed are refused by name", "[ribbon]") {
   const RibbonHamiltonian wide(make_ribbon(RibbonEdge::armchair, 101), catalogs().hopping(),
                                uniform);
   CHECK_THROWS_AS(ribbon_response(wide, {}, nodes, {0, 1}, {0, 1}), InputError);
-  Conditions warm;
-  warm.temperature_K = 300;
-  CHECK_THROWS_AS(ribbon_response(usual(RibbonEdge::armchair, 7), warm, nodes, {0, 1}, {0, 1}),
-                  InputError);
+}
+
+TEST_CASE("free carriers are refused, carriers that do not count are passed over", "[ribbon]") {
+  const Nodes nodes = make_nodes(1e-4);
+  const IndexRange q{nodes.q.index_below(0.003), 2}, xi{0, 2};
+  const auto response = [&](int lines, double temperature_K, double mu_eV) {
+    Conditions conditions;
+    conditions.temperature_K = temperature_K;
+    conditions.chemical_potential_eV = mu_eV;
+    return ribbon_response(usual(RibbonEdge::armchair, lines), conditions, nodes, q, xi);
+  };
+  // Gaps: 7-AGNR 1.535 eV, 8-AGNR 0.207 eV; kT = 0.0259 eV at 300 K.
+  CHECK_THROWS_AS(response(8, 300, 0), InputError);
+  CHECK_THROWS_AS(response(7, 1000, 0), InputError);
+  CHECK_THROWS_AS(response(7, 300, 0.2), InputError);
+  CHECK_THROWS_AS(response(7, 0, 0.8), InputError);
+  CHECK_THROWS_AS(response(7, 0, -0.8), InputError);
+  const RibbonResponse cold = response(7, 0, 0), inside = response(7, 0, 0.7);
+  const RibbonResponse warm = response(7, 300, 0);
+  CHECK(matrix(cold, 0, 0) == matrix(inside, 0, 0));
+  CHECK(matrix(cold, 0, 0) == matrix(warm, 0, 0));
+  CHECK(warm.relative_error > cold.relative_error);
+}
+
+TEST_CASE("the static response is the limit of low frequencies", "[ribbon]") {
+  const RibbonHamiltonian hamiltonian = usual(RibbonEdge::armchair, 7);
+  const Nodes warm = make_nodes(1e-6, 0.16);
+  const RibbonResponse still = ribbon_response(hamiltonian, {}, warm, {-2, 1}, {-1, 1});
+  const RibbonResponse slow = at_node(hamiltonian, warm.q.node(-2), 1e-4, 1e-6);
+  CHECK((matrix(still, 0, 0) - matrix(slow, 0, 0)).norm() < 1e-6 * matrix(still, 0, 0).norm());
 }

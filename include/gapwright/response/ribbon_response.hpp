@@ -53,12 +53,13 @@ class RibbonResponse {
   std::vector<double> values_;
 };
 
-/// Response of a gapped ribbon at T = 0, undoped, by χ(τ) = G(τ)G(-τ): one set of eigenvectors on a
+/// Response of a gapped ribbon without free carriers (T = 0 with μ inside the gap, or T so low that
+/// they do not count at the tolerance) by χ(τ) = G(τ)G(-τ): one set of eigenvectors on a
 /// uniform grid of k serves every q, for the product is taken along the ribbon. The grid is doubled
 /// until the static polarisability settles. Accuracy: below half of nodes.tolerance, see
 /// relative_error; the cost grows as N³. Parallel with OpenMP unless called from a task; a value
 /// does not depend on the ranges. Throws InputError for more than 100 lines, for a gap below 1 meV
-/// and for conditions that are not computed.
+/// and for conditions with free carriers; std::invalid_argument for empty ranges.
 RibbonResponse ribbon_response(const RibbonHamiltonian& hamiltonian, const Conditions& conditions,
                                const Nodes& nodes, IndexRange q, IndexRange xi);
 
