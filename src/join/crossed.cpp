@@ -6,15 +6,24 @@
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/join/coaxial.hpp>
 #include <gapwright/join/crossed.hpp>
+#include <gapwright/math/quadrature.hpp>
 
 #include <algorithm>
+#include <array>
 #include <cmath>
+#include <optional>
 #include <stdexcept>
 
 #include <fmt/format.h>
 
 namespace gapwright {
 namespace {
+
+/// Lowest wave number at T > 0, in inverse distances, where charge waves are this share of the
+/// energy: room for (8.5) of METHODS, whose fit turns e^{-2qD} next to its nodes into an error.
+double lowest_static(double share, double tolerance) {
+  return 2.5e-7 / (1 + 100 * share) * std::min(1.0, tolerance / 1e-4);
+}
 
 /// Step of t in steps of ln q: the integrand varies a little faster along t.
 constexpr double across_step = 0.8;
@@ -44,8 +53,9 @@ Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm
   window.xi = frequencies_at(std::max(1.0, gap) * lower, nodes);
   window.fine = far_apart(std::max(1.0, gap) * lower);
   const LogLattice lattice = nodes_on(window, nodes).q;
-  window.q.first = lattice.index_below(std::min(2e-3, 0.05 * nodes.tolerance / share) /
-                                       std::max(1.0, distance_nm));
+  const double lowest = nodes.warm() ? lowest_static(share, nodes.tolerance)
+                                     : std::min(2e-3, 0.05 * nodes.tolerance / share);
+  window.q.first = lattice.index_below(lowest / std::max(1.0, distance_nm));
   window.q.count = lattice.index_above(limit / (2 * gap)) + 1 - window.q.first + 1;
   const double wider = std::max(radius_1_nm, radius_2_nm);
   const double far = distance_nm - std::min(radius_1_nm, radius_2_nm);
@@ -111,6 +121,27 @@ struct Extent {
   }
 };
 
+/// In e-folds: farther apart two wave numbers of one plane wave count little.
+constexpr double widest_split = 5.0;
+
+/// ∫_{-∞}^0 s dx of s = 1/(a x² + b x + c) through s(0), s(width), s(2·width); none where s falls
+/// otherwise.
+std::optional<double> logarithmic_tail(std::array<double, 3> s, double width) {
+  if (s[0] == 0 || !(s[1] / s[0] > 1) || !(s[2] / s[1] > 1)) return std::nullopt;
+  const double c = 1 / s[0], bend = 1 / s[2] - 2 / s[1] + c;
+  const double a = bend / (2 * width * width), b = (1 / s[1] - c) / width - a * width;
+  if (!(a / c > 0) || !(b / c < 0)) return std::nullopt;
+  // x = -X y/(1 - y)
+  const double X = -c / b;
+  const GaussRule& gauss = gauss_legendre(32);
+  double sum = 0.0;
+  for (std::size_t i = 0; i < gauss.nodes.size(); ++i) {
+    const double y = 0.5 * (1 + gauss.nodes[i]), rest = 1 - y;
+    sum += 0.5 * gauss.weights[i] * X / (a * X * X * y * y - b * X * y * rest + c * rest * rest);
+  }
+  return sum;
+}
+
 /// Sums of one branch.
 class BranchSum {
  public:
@@ -127,7 +158,9 @@ class BranchSum {
         weights_(trapezoid_weights(extent_.q, waves_, {})),
         from_a_(std::size_t(a.frequencies())),
         from_b_(from_a_.size()),
-        product_(from_a_.size()) {}
+        product_(from_a_.size()),
+        static_full_(crossing.first.nodes().warm() ? std::size_t(waves_.count) : 0),
+        static_halved_(static_full_.size()) {}
 
   void run() {
     const double step = across_step * extent_.q.step;
@@ -144,6 +177,13 @@ class BranchSum {
         weigh(j, measure * q, q * std::cosh(t) / branch_.cosine, i % 2 == 0);
       }
     }
+    if (static_full_.empty()) return;
+    // Its lowest nodes lack the long waves of the other body.
+    const int joint = int(std::ceil(widest_split / extent_.q.step));
+    FrequencyDensity& energy = density_.first_round_trip;
+    energy.full[0] += static_correction(static_full_, joint, 1, weights_.full);
+    energy.halved[0] +=
+        static_correction(static_halved_, joint + (waves_.first + joint) % 2, 2, weights_.halved);
   }
 
  private:
@@ -168,12 +208,36 @@ class BranchSum {
     for (std::size_t x = 0; x < product_.size(); ++x) product_[x] += from_a_[x] * from_b_[x];
   }
 
+  /// At ξ = 0 metallic bodies screen as 1/ln q: below a joint the sum gives way to the integral of
+  /// the density per ln q that three nodes above it tell (METHODS (8.5)). What that changes.
+  double static_correction(const std::vector<double>& density, int joint, int stride,
+                           const std::vector<double>& weights) const {
+    const double step = stride * extent_.q.step;
+    const int spacing = stride * std::max(1, int(std::lround(0.5 / step)));
+    if (joint < 0 || joint + 2 * spacing >= waves_.count) return 0.0;
+    const auto per_log = [&](int j) {
+      return extent_.q.node(waves_.first + j) * density[std::size_t(j)];
+    };
+    const double width = spacing * extent_.q.step;
+    const std::optional<double> below = logarithmic_tail(
+        {per_log(joint), per_log(joint + spacing), per_log(joint + 2 * spacing)}, width);
+    if (!below) return 0.0;
+    double summed = 0.0;
+    for (int j = 0; j <= joint; ++j) summed += weights[std::size_t(j)] * density[std::size_t(j)];
+    const double slope = (per_log(joint + stride) - per_log(joint - stride)) / (2 * step);
+    return *below + 0.5 * step * per_log(joint) + step * step / 12 * slope - summed;
+  }
+
   void weigh(int j, double measure, double k, bool even) {
     // (1/sin²γ)·dq₁dq₂/(2π)²·π²/k²
     const double sine = std::sin(crossing_.angle_deg * constants::pi / 180);
     const double factor = -measure / (4 * k * k * sine * sine);
     const double full = factor * weights_.full[std::size_t(j)];
     const double halved = even ? 2 * factor * weights_.halved[std::size_t(j)] : 0.0;
+    if (!static_full_.empty()) {
+      static_full_[std::size_t(j)] += factor * product_[0];
+      if (even) static_halved_[std::size_t(j)] += 2 * factor * product_[0];
+    }
     FrequencyDensity& energy = density_.first_round_trip;
     FrequencyDensity& slope = density_.first_slope;
     for (std::size_t x = 0; x < product_.size(); ++x) {
@@ -197,6 +261,7 @@ class BranchSum {
   IndexRange waves_;
   AxisWeights weights_;
   std::vector<double> from_a_, from_b_, product_;
+  std::vector<double> static_full_, static_halved_;  // at ξ = 0, per dq; empty at T = 0
 };
 
 }  // namespace

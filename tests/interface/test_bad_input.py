@@ -82,9 +82,11 @@ class CommandLine(harness.Case):
     def test_conditions(self):
         bind = ["bind", "5,5@10,10"]
         self.refused([*bind, "--temperature-K", "-5"], "--temperature-K", "0 to 3000 K")
-        self.refused([*bind, "--temperature-K", "300"], "--temperature-K", "only T = 0")
-        self.refused([*bind, "--chemical-potential-eV", "-0.1"], "--chemical-potential-eV",
-                     "only undoped")
+        self.refused([*bind, "--temperature-K", "3001"], "--temperature-K", "0 to 3000 K")
+        self.refused([*bind, "--temperature-K", "0.001"], "--temperature-K",
+                     "0, or 0.01 to 3000 K")
+        self.refused([*bind, "--chemical-potential-eV", "-2.2"], "--chemical-potential-eV",
+                     "-2.16 to 2.16 eV")
         self.good(*bind, "--temperature-K", "0", "--chemical-potential-eV", "0")
 
     def test_retarded(self):
@@ -200,8 +202,10 @@ class Plans(harness.Case):
         self.plan("inner = 10\n", "plan.toml:1", "^")
         self.plan('inner = "10;10"\n', "plan.toml:1", "nearest: (10,10)")
         self.plan('inner = "10,10"\ntemperature_K = -1\n', "plan.toml:2", "0 to 3000 K")
-        self.plan('inner = "10,10"\ntemperature_K = 300\n', "plan.toml:2", "only T = 0")
-        self.plan('inner = "10,10"\nchemical_potential_eV = 0.1\n', "plan.toml:2", "undoped")
+        self.plan('inner = "10,10"\ntemperature_K = 0.001\n', "plan.toml:2",
+                  "0, or 0.01 to 3000 K")
+        self.plan('inner = "10,10"\nchemical_potential_eV = 2.2\n', "plan.toml:2",
+                  "-2.16 to 2.16 eV")
         self.plan('inner = "10,10"\ntolerance = nan\n', "plan.toml:2")
         self.plan('inner = "10,10"\nsort = "energy_mJ_per_m"\n', "nearest: energy_mJ_per_m2")
         self.plan('inner = "10,10"\nhopping = "mine"\n', "plan.toml:2", "nearest-neighbour")
