@@ -36,6 +36,10 @@ double largest_cosh(double tolerance, double sine) {
 
 }  // namespace
 
+double lowest_charge_wave(double gap_nm, double distance_nm, double tolerance) {
+  return std::min(2e-3, 0.05 * tolerance / charge_wave_share(gap_nm)) / std::max(1.0, distance_nm);
+}
+
 Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm,
                       const Nodes& nodes) {
   const double gap = distance_nm - radius_1_nm - radius_2_nm;
@@ -53,9 +57,11 @@ Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm
   window.xi = frequencies_at(std::max(1.0, gap) * lower, nodes);
   window.fine = far_apart(std::max(1.0, gap) * lower);
   const LogLattice lattice = nodes_on(window, nodes).q;
-  const double lowest = nodes.warm() ? lowest_static(share, nodes.tolerance)
-                                     : std::min(2e-3, 0.05 * nodes.tolerance / share);
-  window.q.first = lattice.index_below(lowest / std::max(1.0, distance_nm));
+  const double lowest = lowest_charge_wave(gap, distance_nm, nodes.tolerance);
+  window.q.first = lattice.index_below(
+      nodes.warm()
+          ? std::min(lowest, lowest_static(share, nodes.tolerance) / std::max(1.0, distance_nm))
+          : lowest);
   window.q.count = lattice.index_above(limit / (2 * gap)) + 1 - window.q.first + 1;
   const double wider = std::max(radius_1_nm, radius_2_nm);
   const double far = distance_nm - std::min(radius_1_nm, radius_2_nm);

@@ -166,7 +166,10 @@ CrossedFurther further_on_grid(const Crossing& row, bool with_slope) {
   const double step = make_nodes(nodes.tolerance).q.step *
                       std::min(step_per_radian * angle, widest_step) *
                       std::sqrt(std::min(1.0, narrow_body * row.gap() / row.wider_radius()));
-  const double lowest = lowest_factor * nodes.q.node(row.window.q.first);
+  const double lowest =
+      lowest_factor * (nodes.warm()
+                           ? lowest_charge_wave(row.gap(), row.distance_nm, nodes.tolerance)
+                           : nodes.q.node(row.window.q.first));
   const double highest = largest_exponent(nodes.tolerance) / (4 * row.gap());
   const CrossedGrid grid(step, lowest, highest, angle), coarse(2 * step, lowest, highest, angle);
   const int lowest_index = nodes.q.index_below(coarse.node(0));

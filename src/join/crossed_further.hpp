@@ -5,6 +5,9 @@
 
 namespace gapwright {
 
+/// The lowest wave number of a crossed row at T = 0, and of its further round trips.
+double lowest_charge_wave(double gap_nm, double distance_nm, double tolerance);
+
 /// Two outward scatterers on a window, their distance and angle.
 struct Crossing {
   const Scatterer& first;
