@@ -24,7 +24,7 @@ struct CommandText {
 const std::vector<OptionText>& common_options() {
   static const std::vector<OptionText> options = {
       {"--json", "", "One JSON object, or one a line"},
-      {"--temperature-K", "T", "Temperature, 0 or 0.01 to 3000 (default 0)"},
+      {"--temperature-K", "T", "Temperature, 0 or 0.01 to 3000 (default 300)"},
       {"--chemical-potential-eV", "MU", "Doping, from neutrality at T = 0 (default 0)"},
       {"--hopping", "NAME", "Hopping set of the catalogue"},
       {"--background", "NAME", "Background response of the catalogue"},

@@ -111,7 +111,10 @@ Plan read_base_plan(const Words& words, const Catalogs& catalogs) {
                       {},
                       "one plan file, or flags",
                       {}});
-  return words.operands.empty() ? Plan{} : read_plan(words.operands.front(), catalogs);
+  if (!words.operands.empty()) return read_plan(words.operands.front(), catalogs);
+  Plan plan;
+  plan.settings = usual_settings();
+  return plan;
 }
 
 /// Liquids act on what lies beside each other, and leave no well.

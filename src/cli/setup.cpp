@@ -70,6 +70,12 @@ Catalogs load_catalogs(const Words& words) {
   return folder ? Catalogs::from_folder(*folder) : Catalogs::built_in();
 }
 
+Settings usual_settings() {
+  Settings settings;
+  settings.conditions.temperature_K = usual_temperature_K;
+  return settings;
+}
+
 Settings read_settings(const Words& words, const Catalogs& catalogs, Settings base) {
   Settings settings = std::move(base);
   Conditions& conditions = settings.conditions;

@@ -17,8 +17,11 @@ void prepare_machine(const Words& words);
 int thread_count(const Words& words);
 /// The built-in catalogues or those of --catalogs.
 Catalogs load_catalogs(const Words& words);
+/// 300 K, undoped, the default entries of the catalogues.
+Settings usual_settings();
 /// The options on top of `base`; each error names its option.
-Settings read_settings(const Words& words, const Catalogs& catalogs, Settings base = {});
+Settings read_settings(const Words& words, const Catalogs& catalogs,
+                       Settings base = usual_settings());
 /// True when an option of read_settings was given.
 bool has_settings(const Words& words);
 

@@ -71,7 +71,9 @@ void read_tubes(const TomlReader& reader, Plan& plan) {
 
 void read_settings(const TomlReader& reader, const Catalogs& catalogs, Settings& settings) {
   Conditions& conditions = settings.conditions;
-  conditions.temperature_K = reader.optional_number("temperature_K", {0, 3000, "K"}).value_or(0.0);
+  conditions.temperature_K =
+      reader.optional_number("temperature_K", {0, highest_temperature_K, "K"})
+          .value_or(usual_temperature_K);
   conditions.chemical_potential_eV =
       reader.optional_number("chemical_potential_eV", {-10, 10, "eV"}).value_or(0.0);
   at_key(reader, "temperature_K", [&] { validate(conditions); });

@@ -74,7 +74,10 @@ class Bind(harness.Case):
     def test_json_has_all_fields_in_order(self):
         row = json.loads(self.good("bind", "5,5@10,10", "--json").stdout)
         self.assertEqual(list(row), FIELDS)
-        self.assertIsNone(row["thermal_share"])
+        self.assertEqual((row["temperature_K"], row["chemical_potential_eV"]), (300, 0))
+        self.assertGreater(row["thermal_share"], 0)
+        cold = json.loads(self.good("bind", "5,5@10,10", "--temperature-K", "0", "--json").stdout)
+        self.assertIsNone(cold["thermal_share"])
         self.assertEqual((row["object_1"], row["object_2"]), ("(5,5)", "(10,10)"))
         self.assertAlmostEqual(row["energy_eV_per_nm"],
                                row["dispersion_eV_per_nm"] + row["contact_eV_per_nm"], places=12)
@@ -86,7 +89,8 @@ class Bind(harness.Case):
             self.assertIn(part, text)
 
     def test_retarded(self):
-        usual, retarded = (json.loads(self.good("bind", "5,5@10,10", "--json", *flag).stdout)
+        usual, retarded = (json.loads(self.good("bind", "5,5@10,10", "--temperature-K", "0", "--json",
+                                                *flag).stdout)
                            for flag in ([], ["--retarded"]))
         self.assertIsNone(usual["retardation_factor"])
         self.assertAlmostEqual(retarded["retardation_factor"], 0.998763, delta=2e-5)
@@ -165,7 +169,7 @@ class Rank(harness.Case):
         self.assertEqual(made["numerics_version"], version["numerics_version"])
         self.assertEqual(made["catalog_hash"], version["catalog_hash"])
         self.assertEqual(made["kernel"], version["kernel"])
-        self.assertEqual((made["temperature_K"], made["tolerance"]), (0, 1e-4))
+        self.assertEqual((made["temperature_K"], made["tolerance"]), (300, 1e-4))
         self.assertEqual((run["completed"], run["rows_computed"]), (1, rows))
         self.assertIn('inner = "(10,10)"', run["plan"])
         self.assertEqual(objects, rows + 1)

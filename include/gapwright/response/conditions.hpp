@@ -16,6 +16,8 @@ struct Conditions {
   bool operator==(const Conditions&) const = default;
 };
 
+/// What plans and commands take where nothing is said.
+inline constexpr double usual_temperature_K = 300.0;
 inline constexpr double lowest_temperature_K = 0.01;  ///< above zero
 inline constexpr double highest_temperature_K = 3000.0;
 /// |μ| in hoppings: below the saddle point of the bands.
