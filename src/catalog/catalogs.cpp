@@ -10,7 +10,8 @@ namespace {
 
 const std::vector<std::string>& file_names() {
   static const std::vector<std::string> names = {"hopping.toml", "background.toml", "ribbons.toml",
-                                                 "contact.toml", "media.toml",      "checks.toml"};
+                                                 "contact.toml", "media.toml",      "wires.toml",
+                                                 "checks.toml"};
   return names;
 }
 
@@ -77,6 +78,7 @@ const Catalogs& Catalogs::built_in() {
     all.ribbon_edges_ = read_ribbon_edges(built_in_file("ribbons.toml"));
     all.contact_targets_ = read_contact_targets(built_in_file("contact.toml"));
     all.media_ = read_media(built_in_file("media.toml"));
+    all.wires_ = read_wires(built_in_file("wires.toml"));
     all.checks_ = read_checks(built_in_file("checks.toml"), names_of(all.hopping_sets_));
     return all;
   }();
@@ -105,6 +107,7 @@ Catalogs Catalogs::from_folder(const std::filesystem::path& folder) {
   replace("contact.toml",
           [&](const TomlReader& file) { all.contact_targets_ = read_contact_targets(file); });
   replace("media.toml", [&](const TomlReader& file) { all.media_ = read_media(file); });
+  replace("wires.toml", [&](const TomlReader& file) { all.wires_ = read_wires(file); });
   replace("checks.toml", [&](const TomlReader& file) {
     all.checks_ = read_checks(file, names_of(all.hopping_sets_));
   });
@@ -162,6 +165,17 @@ const Medium& Catalogs::liquid(const std::string& name) const {
   return medium(name);
 }
 
+const ElectronGasWire& Catalogs::wire(const std::string& name) const {
+  for (const ElectronGasWire& wire : wires_)
+    if (wire.name == name) return wire;
+  const auto names = names_of(wires_);
+  throw InputError({"unknown wire '" + name + "'",
+                    {},
+                    {},
+                    "one of " + joined(names),
+                    nearest_word(name, names)});
+}
+
 std::string Catalogs::hash() const {
   ContentHash hash;
   for (const HoppingSet& set : hopping_sets_) {
@@ -183,6 +197,13 @@ std::string Catalogs::hash() const {
         .add(static_cast<std::int64_t>(target.kind))
         .add(target.spacing_nm)
         .add(target.energy_eV_per_nm2);
+  for (const ElectronGasWire& wire : wires_)
+    hash.add(wire.name)
+        .add(wire.mass)
+        .add(wire.density_per_nm)
+        .add(wire.degeneracy)
+        .add(wire.radius_nm)
+        .add(wire.host_permittivity);
   for (const Medium& medium : media_) {
     hash.add(medium.name)
         .add(static_cast<std::int64_t>(medium.liquid))

@@ -4,6 +4,7 @@
 #include <gapwright/catalog/entries.hpp>
 #include <gapwright/catalog/media.hpp>
 #include <gapwright/catalog/toml_reader.hpp>
+#include <gapwright/catalog/wires.hpp>
 
 #include <string>
 #include <vector>
@@ -18,6 +19,7 @@ std::vector<Background> read_backgrounds(const TomlReader& file);
 std::vector<RibbonEdges> read_ribbon_edges(const TomlReader& file);
 std::vector<ContactTarget> read_contact_targets(const TomlReader& file);
 std::vector<Medium> read_media(const TomlReader& file);
+std::vector<ElectronGasWire> read_wires(const TomlReader& file);
 /// `hopping_names` are those a row may ask for.
 std::vector<CheckRow> read_checks(const TomlReader& file,
                                   const std::vector<std::string>& hopping_names);

@@ -17,8 +17,8 @@ using label_text::blanks_removed;
 using label_text::quoted;
 
 constexpr const char* expected_object =
-    "a tube such as (10,10) or 10,10, walls such as 5,5@10,10 (inner@outer), graphene, or a ribbon "
-    "such as 13-AGNR or 6-ZGNR";
+    "a tube such as (10,10) or 10,10, walls such as 5,5@10,10 (inner@outer), graphene, a ribbon "
+    "such as 13-AGNR or 6-ZGNR, or wire:NAME";
 
 /// Indices as typed, before they are made canonical; capped far outside the accepted range.
 struct TypedIndices {
@@ -97,8 +97,7 @@ void WallReader::refuse_text(std::string_view text) const {
   if (label_text::is_ribbon(text))
     refuse(fmt::format("{} is a ribbon and no wall", quoted(text)), expected_object);
   if (text.starts_with("wire"))
-    refuse(fmt::format("{} is a wire, which this version does not know", quoted(text)),
-           expected_object);
+    refuse(fmt::format("{} is a wire and no wall", quoted(text)), expected_object);
   const bool comma = text.find(',') != std::string_view::npos;
   if (const auto pair = label_text::two_numbers(text))
     refuse(quoted(text) + (comma ? " holds more than two indices and a comma"
@@ -133,6 +132,27 @@ void require_room(std::string_view label, const Tube& inner, const Tube& outer) 
 
 }  // namespace
 
+namespace {
+
+constexpr std::string_view wire_prefix = "wire:";
+
+WireObject read_wire(std::string_view label, const std::string& text) {
+  const std::string name = text.substr(wire_prefix.size());
+  const auto fits = [](char c) {
+    return (c >= 'a' && c <= 'z') || (c >= '0' && c <= '9') || c == '-';
+  };
+  if (name.empty() || !std::all_of(name.begin(), name.end(), fits))
+    throw InputError(
+        {name.empty() ? "the wire has no name" : quoted(name) + " is not the name of a wire",
+         fmt::format("label {}", quoted(label)),
+         {},
+         "wire:NAME with a name of the catalogue: small letters, digits and hyphens",
+         {}});
+  return {name};
+}
+
+}  // namespace
+
 bool TubeObject::operator==(const TubeObject& other) const {
   if (walls.size() != other.walls.size()) return false;
   for (std::size_t i = 0; i < walls.size(); ++i)
@@ -146,6 +166,9 @@ ParsedLabel parse_label(std::string_view label) {
   if (text == "graphene") return {SheetObject{}, {}};
   if (label_text::is_ribbon(text) && text.find('@') == std::string::npos)
     return {RibbonObject{read_ribbon(text)}, {}};
+
+  if (text.starts_with(wire_prefix) && text.find('@') == std::string::npos)
+    return {read_wire(label, text), {}};
 
   const std::vector<std::string> parts = label_text::split(text, '@');
   ParsedLabel parsed;
@@ -163,6 +186,7 @@ std::string label_of(const Object& object) {
   if (std::holds_alternative<SheetObject>(object)) return "graphene";
   if (const auto* ribbon = std::get_if<RibbonObject>(&object)) return ribbon->ribbon.label();
   if (const HalfSpaceObject* below = std::get_if<HalfSpaceObject>(&object)) return below->medium;
+  if (const auto* wire = std::get_if<WireObject>(&object)) return "wire:" + wire->name;
   std::string text;
   for (const Tube& wall : std::get<TubeObject>(object).walls)
     text += (text.empty() ? "" : "@") + wall.label();

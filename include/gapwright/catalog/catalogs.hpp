@@ -3,6 +3,7 @@
 
 #include <gapwright/catalog/entries.hpp>
 #include <gapwright/catalog/media.hpp>
+#include <gapwright/catalog/wires.hpp>
 
 #include <cstdint>
 #include <filesystem>
@@ -18,7 +19,7 @@ class Catalogs {
   /// The catalogues compiled into the program. Throws InputError only if the build is broken.
   static const Catalogs& built_in();
   /// The same files read from a folder (hopping.toml, background.toml, ribbons.toml, contact.toml,
-  /// media.toml, checks.toml).
+  /// media.toml, wires.toml, checks.toml).
   /// A missing file keeps the built-in one; built-in checks that ask for a hopping set the folder
   /// does not hold are left out. Throws InputError with file, line, text and caret.
   static Catalogs from_folder(const std::filesystem::path& folder);
@@ -33,12 +34,14 @@ class Catalogs {
   /// What bodies can stand in: vacuum or a liquid.
   const Medium& liquid(const std::string& name = {}) const;
   std::vector<std::string> liquid_names() const;
+  const ElectronGasWire& wire(const std::string& name) const;
 
   const std::vector<HoppingSet>& hopping_sets() const { return hopping_sets_; }
   const std::vector<Background>& backgrounds() const { return backgrounds_; }
   const std::vector<RibbonEdges>& ribbon_edge_sets() const { return ribbon_edges_; }
   const std::vector<ContactTarget>& contact_targets() const { return contact_targets_; }
   const std::vector<Medium>& media() const { return media_; }
+  const std::vector<ElectronGasWire>& wires() const { return wires_; }
   const std::vector<CheckRow>& checks() const { return checks_; }
 
   /// 64-bit hash over all values (as IEEE bits) and names that enter results; titles, sources and
@@ -51,6 +54,7 @@ class Catalogs {
   std::vector<RibbonEdges> ribbon_edges_;
   std::vector<ContactTarget> contact_targets_;
   std::vector<Medium> media_;
+  std::vector<ElectronGasWire> wires_;
   std::vector<CheckRow> checks_;
 };
 
