@@ -29,22 +29,17 @@ RowPose edge_on_pose(const Ribbon& second, double gap_nm, double offset_nm) {
       .y_nm = offset_nm, .z_nm = gap_nm + 0.5 * second.nuclei_width_nm(), .width_angle_deg = 90.0};
 }
 
-namespace {
-
-struct Point {
-  double y, z;
-};
-
-/// Rows of the second body where they are.
-std::vector<Point> placed(const std::vector<RibbonRow>& rows, const RowPose& pose) {
+std::vector<RowPoint> placed_rows(const std::vector<RibbonRow>& rows, const RowPose& pose) {
   const double angle = pose.width_angle_deg * constants::pi / 180;
   // cos 90° is to be nothing at all.
   const double cosine = pose.width_angle_deg == 90 ? 0.0 : std::cos(angle);
-  std::vector<Point> points;
+  std::vector<RowPoint> points;
   for (const RibbonRow& row : rows)
     points.push_back({pose.y_nm + row.y_nm * cosine, pose.z_nm + row.y_nm * std::sin(angle)});
   return points;
 }
+
+namespace {
 
 /// K_0 … K_3 at x > 0, underflowing to nothing.
 struct LowOrders {
@@ -66,8 +61,9 @@ struct PointCoupling {
 
 /// Directional derivatives lower or raise the order: (n·∇)K_m e^{imφ} =
 /// -(q/2)[e^{-iβ}K_{m+1}e^{i(m+1)φ} + e^{iβ}K_{m-1}e^{i(m-1)φ}], n at the angle β.
-PointCoupling couple_points(const std::vector<RibbonRow>& first, const std::vector<Point>& second,
-                            const RowPose& pose, double q, bool with_slope) {
+PointCoupling couple_points(const std::vector<RibbonRow>& first,
+                            const std::vector<RowPoint>& second, const RowPose& pose, double q,
+                            bool with_slope) {
   PointCoupling c;
   for (auto* set : {c.value, c.slope})
     for (int p = 0; p < 4; ++p)
@@ -78,8 +74,8 @@ PointCoupling couple_points(const std::vector<RibbonRow>& first, const std::vect
   const double k = 2 * constants::coulomb_eV_nm;
   std::size_t at = 0;
   for (const RibbonRow& from : first)
-    for (const Point& to : second) {
-      const double y = to.y - from.y_nm, z = to.z;
+    for (const RowPoint& to : second) {
+      const double y = to.y_nm - from.y_nm, z = to.z_nm;
       const double angle = std::atan2(z, y);
       const LowOrders w(q * std::hypot(y, z));
       const auto once = [&](double a) { return -q * w.k1 * std::cos(angle - a); };
@@ -131,7 +127,7 @@ class RowPair {
         pose_(pose),
         window_(window),
         with_slope_(with_slope),
-        points_(placed(second.rows(), pose)),
+        points_(placed_rows(second.rows(), pose)),
         dipole_1_(first.rows().size(), first.dipole().data() + shift(first.window())),
         dipole_2_(second.rows().size(), second.dipole().data() + shift(second.window())) {}
 
@@ -175,7 +171,7 @@ class RowPair {
   const RowPose& pose_;
   const Window& window_;
   bool with_slope_;
-  std::vector<Point> points_;
+  std::vector<RowPoint> points_;
   std::vector<const double*> dipole_1_, dipole_2_;
 };
 
@@ -184,8 +180,9 @@ class RowPair {
 double least_row_distance_nm(const std::vector<RibbonRow>& first,
                              const std::vector<RibbonRow>& second, const RowPose& pose) {
   double least = HUGE_VAL;
-  for (const Point& to : placed(second, pose))
-    for (const RibbonRow& from : first) least = std::min(least, std::hypot(to.y - from.y_nm, to.z));
+  for (const RowPoint& to : placed_rows(second, pose))
+    for (const RibbonRow& from : first)
+      least = std::min(least, std::hypot(to.y_nm - from.y_nm, to.z_nm));
   return least;
 }
 

@@ -146,7 +146,7 @@ WireObject read_wire(std::string_view label, const std::string& text) {
         {name.empty() ? "the wire has no name" : quoted(name) + " is not the name of a wire",
          fmt::format("label {}", quoted(label)),
          {},
-         "wire:NAME with a name of the catalogue: small letters, digits and hyphens",
+         expected_object,
          {}});
   return {name};
 }

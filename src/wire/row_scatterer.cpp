@@ -165,4 +165,22 @@ RowScatterer row_scatterer(const std::vector<RibbonRow>& rows, const RowResponse
   return scatterer;
 }
 
+RowScatterer row_scatterer(const RibbonResponse& response, const Background& background,
+                           const Window& window) {
+  if (!response.q().contains(window.q) || !response.xi().contains(window.xi))
+    throw std::invalid_argument("row_scatterer: the response does not cover the window");
+  const auto source = [&](int q_index, IndexRange xi, std::span<double> chi) {
+    const std::size_t cells = std::size_t(response.rows()) * std::size_t(response.rows());
+    const std::size_t frequencies = std::size_t(xi.count);
+    std::vector<double> matrix(cells);
+    for (int k = 0; k < xi.count; ++k) {
+      response.matrix(q_index - response.q().first, xi.first + k - response.xi().first, matrix);
+      for (std::size_t at = 0; at < cells; ++at)
+        chi[at * frequencies + std::size_t(k)] = matrix[at];
+    }
+  };
+  return row_scatterer(ribbon_rows(response.ribbon()), source, background, response.nodes(),
+                       window);
+}
+
 }  // namespace gapwright

@@ -119,7 +119,7 @@ TEST_CASE("everything else is refused with what is expected", "[label]") {
   using namespace std::string_literals;
   for (const std::string& label :
        {""s, " \t"s, "nanotube"s, "(10,10)(5,5)"s, "()"s, "("s, "@"s, "1e1,1"s, "(１０,１０)"s,
-        "\xff\xfe"s, "10,10\0"s, "wire:copper"s, std::string(100000, '9')}) {
+        "\xff\xfe"s, "10,10\0"s, "wire:Copper"s, std::string(100000, '9')}) {
     const InputError::Parts parts = refusal(label);
     CHECK(holds(parts.expected, "(10,10)"));
     CHECK(holds(parts.expected, "graphene"));
@@ -128,7 +128,7 @@ TEST_CASE("everything else is refused with what is expected", "[label]") {
   CHECK(refusal("graphen").nearest == "graphene");
   CHECK(refusal("Graphene").nearest == "graphene");
   CHECK(holds(refusal("5,5@6-zgnr").what, "ribbon"));
-  CHECK(holds(refusal("wire:copper").what, "wire"));
+  CHECK(holds(refusal("wire:Copper").what, "wire"));
 }
 
 TEST_CASE("labels of ribbons", "[label]") {

@@ -29,6 +29,12 @@ RowPose coplanar_pose(const Ribbon& first, const Ribbon& second, double gap_nm,
 /// The second one stands upright on the first one's face, its lowest row at a height.
 RowPose edge_on_pose(const Ribbon& second, double gap_nm, double offset_nm = 0.0);
 
+/// A row of a placed ribbon in the plane across its axis.
+struct RowPoint {
+  double y_nm, z_nm;
+};
+std::vector<RowPoint> placed_rows(const std::vector<RibbonRow>& rows, const RowPose& pose);
+
 /// The least distance between a row of either ribbon [nm].
 double least_row_distance_nm(const std::vector<RibbonRow>& first,
                              const std::vector<RibbonRow>& second, const RowPose& pose);

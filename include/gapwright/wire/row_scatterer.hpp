@@ -4,6 +4,7 @@
 #include <gapwright/catalog/entries.hpp>
 #include <gapwright/lattice/ribbon.hpp>
 #include <gapwright/math/nodes.hpp>
+#include <gapwright/response/ribbon_response.hpp>
 
 #include <functional>
 #include <span>
@@ -63,6 +64,10 @@ using RowResponseSource = std::function<void(int q_index, IndexRange xi, std::sp
 /// Cost rows³ a node. Throws std::domain_error for fewer than two rows.
 RowScatterer row_scatterer(const std::vector<RibbonRow>& rows, const RowResponseSource& response,
                            const Background& background, const Nodes& nodes, const Window& window);
+
+/// From the response of a ribbon, which must cover the window: std::invalid_argument.
+RowScatterer row_scatterer(const RibbonResponse& response, const Background& background,
+                           const Window& window);
 
 /// V_jj' = k_e[⟨K₀(q|y_j-y'|)⟩ over strip j' + ⟨K₀(q|y-y_j'|)⟩ over strip j] [eV·nm], row-major.
 std::vector<double> row_coulomb_eV_nm(const std::vector<RibbonRow>& rows, double q_per_nm);
