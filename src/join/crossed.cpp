@@ -1,6 +1,7 @@
 #include "charge_waves.hpp"
 #include "crossed_further.hpp"
 #include "multipoles.hpp"
+#include "row_face.hpp"
 #include "wave_table.hpp"
 
 #include <gapwright/catalog/constants.hpp>
@@ -43,7 +44,7 @@ double lowest_charge_wave(double gap_nm, double distance_nm, double tolerance) {
 Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm,
                       const Nodes& nodes) {
   const double gap = distance_nm - radius_1_nm - radius_2_nm;
-  if (!(radius_1_nm > 0) || !(radius_2_nm > 0) || !(gap > 0) || !std::isfinite(gap))
+  if (!(radius_1_nm >= 0) || !(radius_2_nm >= 0) || !(gap > 0) || !std::isfinite(gap))
     throw std::domain_error(fmt::format(
         "crossed_window: radii {} and {} nm, axes {} nm apart, required: bodies that do not touch",
         radius_1_nm, radius_2_nm, distance_nm));
@@ -95,9 +96,9 @@ std::vector<Branch> branches_of(double angle_deg) {
 
 /// Where the sums of a crossed row run.
 struct Extent {
-  explicit Extent(const Crossing& row)
-      : tolerance(row.first.nodes().tolerance),
-        bodies(row.first.nodes().q),
+  explicit Extent(const CrossedAxes& row)
+      : tolerance(row.nodes.tolerance),
+        bodies(row.nodes.q),
         q(row.gap() > 1.0 ? bodies : make_nodes(tolerance).q),
         stride(int(std::lround(q.step / bodies.step))),
         lowest(bodies.node(row.window.q.first)),
@@ -151,8 +152,8 @@ std::optional<double> logarithmic_tail(std::array<double, 3> s, double width) {
 /// Sums of one branch.
 class BranchSum {
  public:
-  BranchSum(const Crossing& crossing, const Branch& branch, const WaveTable& a, const WaveTable& b,
-            CrossedDensity& density, bool with_slope)
+  BranchSum(const CrossedAxes& crossing, const Branch& branch, const FaceTable& a,
+            const FaceTable& b, CrossedDensity& density, bool with_slope)
       : crossing_(crossing),
         extent_(crossing),
         branch_(branch),
@@ -257,11 +258,11 @@ class BranchSum {
     }
   }
 
-  const Crossing& crossing_;
+  const CrossedAxes& crossing_;
   const Extent extent_;
   const Branch& branch_;
-  const WaveTable& a_;
-  const WaveTable& b_;
+  const FaceTable& a_;
+  const FaceTable& b_;
   CrossedDensity& density_;
   bool with_slope_;
   IndexRange waves_;
@@ -276,42 +277,74 @@ double Crossing::wider_radius() const {
   return std::max(first.radius_nm(), second.radius_nm());
 }
 
-void Crossing::require(const char* where) const {
+void CrossedAxes::require(const char* where) const {
   if (!(gap() > 0) || !std::isfinite(gap()))
     throw std::domain_error(
         fmt::format("{}: axes {} nm apart, required: more than the radii {} and {} nm together",
-                    where, distance_nm, first.radius_nm(), second.radius_nm()));
+                    where, distance_nm, radius_1, radius_2));
   if (!(angle_deg >= min_crossing_deg && angle_deg <= max_crossing_deg))
     throw std::domain_error(fmt::format("{}: angle {} degrees, required: {} … {}", where, angle_deg,
                                         min_crossing_deg, max_crossing_deg));
+}
+
+void Crossing::require(const char* where) const {
+  axes().require(where);
   for (const Scatterer* body : {&first, &second})
     if (body->channel() != Channel::outward || !body->window().covers(window))
       throw std::invalid_argument(
           fmt::format("{}: outward scatterers on the window are required", where));
 }
 
+namespace {
+
+/// The sums of all branches; `lowest` of the tables is that of the extent.
+CrossedDensity crossed_sum(const CrossedAxes& axes, const FaceTable& a, const FaceTable& b,
+                           bool with_slope) {
+  CrossedDensity density;
+  density.first_slope.derivatives = 1;
+  for (FrequencyDensity* part : {&density.first_round_trip, &density.first_slope}) {
+    if (part == &density.first_slope && !with_slope) continue;
+    part->full.assign(std::size_t(axes.window.xi.count), 0.0);
+    part->halved.assign(std::size_t(axes.window.xi.count), 0.0);
+  }
+  for (const Branch& branch : branches_of(axes.angle_deg))
+    BranchSum(axes, branch, a, b, density, with_slope).run();
+  return density;
+}
+
+int lowest_index(const CrossedAxes& axes) {
+  return Extent(axes).lowest_index(branches_of(axes.angle_deg));
+}
+
+}  // namespace
+
 CrossedDensity crossed_density(const Scatterer& first, const Scatterer& second, double distance_nm,
                                double angle_deg, const Window& window, bool with_slope) {
   const Crossing crossing{first, second, window, distance_nm, angle_deg};
   crossing.require("crossed_density");
-  CrossedDensity density;
-  density.first_slope.derivatives = 1;
-  const std::size_t frequencies = std::size_t(window.xi.count);
-  for (FrequencyDensity* part : {&density.first_round_trip, &density.first_slope}) {
-    if (part == &density.first_slope && !with_slope) continue;
-    part->full.assign(frequencies, 0.0);
-    part->halved.assign(frequencies, 0.0);
-  }
-  const std::vector<Branch> branches = branches_of(angle_deg);
-  const int lowest = Extent(crossing).lowest_index(branches);
-  const WaveTable a(first, window, lowest);
-  if (&first == &second) {
-    for (const Branch& b : branches) BranchSum(crossing, b, a, a, density, with_slope).run();
-    return density;
-  }
-  const WaveTable b_table(second, window, lowest);
-  for (const Branch& b : branches) BranchSum(crossing, b, a, b_table, density, with_slope).run();
-  return density;
+  const CrossedAxes axes = crossing.axes();
+  const WaveTable a(first, window, lowest_index(axes));
+  if (&first == &second) return crossed_sum(axes, a, a, with_slope);
+  const WaveTable b(second, window, lowest_index(axes));
+  return crossed_sum(axes, a, b, with_slope);
+}
+
+CrossedDensity crossed_density(const RowScatterer& first, const RowScatterer& second, double gap_nm,
+                               double angle_deg, const Window& window, bool with_slope) {
+  const CrossedAxes axes{first.nodes(), window, 0.0, 0.0, gap_nm, angle_deg};
+  axes.require("crossed_density");
+  const RowFace a(first, window);
+  if (&first == &second) return crossed_sum(axes, a, a, with_slope);
+  return crossed_sum(axes, a, RowFace(second, window), with_slope);
+}
+
+CrossedDensity crossed_density(const RowScatterer& ribbon, const Scatterer& tube,
+                               double distance_nm, double angle_deg, const Window& window,
+                               bool with_slope) {
+  const CrossedAxes axes{tube.nodes(), window, 0.0, tube.radius_nm(), distance_nm, angle_deg};
+  axes.require("crossed_density");
+  return crossed_sum(axes, RowFace(ribbon, window), WaveTable(tube, window, lowest_index(axes)),
+                     with_slope);
 }
 
 }  // namespace gapwright

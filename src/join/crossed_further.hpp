@@ -8,6 +8,22 @@ namespace gapwright {
 /// The lowest wave number of a crossed row at T = 0, and of its further round trips.
 double lowest_charge_wave(double gap_nm, double distance_nm, double tolerance);
 
+/// Where two crossed bodies stand, a flat one with radius 0.
+struct CrossedAxes {
+  const Nodes& nodes;
+  const Window& window;
+  double radius_1, radius_2;
+  double distance_nm, angle_deg;
+
+  double gap() const { return distance_nm - radius_1 - radius_2; }
+  /// Distances of a plane in the middle of the gap from the two axes.
+  double depth_1() const { return radius_1 + 0.5 * gap(); }
+  double depth_2() const { return radius_2 + 0.5 * gap(); }
+  /// Throws std::domain_error for an angle outside 1° … 90° or bodies that touch; `where` names the
+  /// function.
+  void require(const char* where) const;
+};
+
 /// Two outward scatterers on a window, their distance and angle.
 struct Crossing {
   const Scatterer& first;
@@ -15,6 +31,9 @@ struct Crossing {
   const Window& window;
   double distance_nm, angle_deg;
 
+  CrossedAxes axes() const {
+    return {first.nodes(), window, first.radius_nm(), second.radius_nm(), distance_nm, angle_deg};
+  }
   double gap() const { return distance_nm - first.radius_nm() - second.radius_nm(); }
   double wider_radius() const;
   /// Distances of a plane in the middle of the gap from the two axes.

@@ -2,6 +2,7 @@
 #pragma once
 
 #include "crossed_kernel.hpp"
+#include "face.hpp"
 
 #include <gapwright/shell/scatterer.hpp>
 
@@ -24,18 +25,18 @@ struct WavePlace {
 /// ln T_m (or T_m where it changes sign) of one outward scatterer, interpolated in ln q over ten
 /// nodes: at the step of a tolerance the error of an energy is below a hundredth of it. Below the
 /// window T_0 continues as a power, the others as the multipole itself.
-class WaveTable {
+class WaveTable final : public FaceTable {
  public:
   /// `lowest_index` is the lattice index down to which values will be asked for.
   WaveTable(const Scatterer& scatterer, const Window& window, int lowest_index);
 
-  int frequencies() const { return frequencies_; }
+  int frequencies() const override { return frequencies_; }
 
   /// e^{-2k·depth} Σ_m T_m(q) [(k + k_⊥)/q]^{2m} over m of both signs, at every frequency;
   /// q lies `shift` nodes above the place, k² = q² + k_⊥². Multipoles that add less than a
   /// thousandth of the tolerance are left out.
   void plane_wave(const WavePlace& place, int shift, double q, double k, double across,
-                  double depth, std::span<double> out) const;
+                  double depth, std::span<double> out) const override;
 
   /// T_m(q) = reduced·e^{log_scale} for m = 0 … orders-1; reduced is [m][ξ]. Returns orders.
   int multipoles(const WavePlace& place, double q, std::vector<double>& reduced,

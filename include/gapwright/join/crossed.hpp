@@ -3,15 +3,17 @@
 
 #include <gapwright/join/density.hpp>
 #include <gapwright/shell/scatterer.hpp>
+#include <gapwright/wire/row_scatterer.hpp>
 
 namespace gapwright {
 
 inline constexpr double min_crossing_deg = 1.0;
 inline constexpr double max_crossing_deg = 90.0;
 
-/// The window of a crossed row at any angle: multipoles as of parallel bodies, wave numbers and
-/// frequencies further down, because the bodies come together at one place only. Depends on radii,
-/// distance of the axes and tolerance. Throws std::domain_error for bodies that touch.
+/// The window of a crossed row at any angle, radius 0 for a ribbon's face: multipoles as of
+/// parallel bodies, wave numbers and frequencies further down, because the bodies come together at
+/// one place only. Depends on radii, distance of the axes and tolerance. Throws std::domain_error
+/// for bodies that touch.
 Window crossed_window(double radius_1_nm, double radius_2_nm, double distance_nm,
                       const Nodes& nodes);
 
@@ -28,6 +30,14 @@ struct CrossedDensity {
 /// empty. Throws std::domain_error for angles outside 1° … 90° and bodies that touch.
 CrossedDensity crossed_density(const Scatterer& first, const Scatterer& second, double distance_nm,
                                double angle_deg, const Window& window, bool with_slope);
+
+/// The first round trip of two ribbons face to face, or of a ribbon's face and a tube, as above;
+/// further ones are not computed. The window is that of radius 0 for a ribbon.
+CrossedDensity crossed_density(const RowScatterer& first, const RowScatterer& second, double gap_nm,
+                               double angle_deg, const Window& window, bool with_slope);
+CrossedDensity crossed_density(const RowScatterer& ribbon, const Scatterer& tube,
+                               double distance_nm, double angle_deg, const Window& window,
+                               bool with_slope);
 
 /// Further round trips, ln det(1 - R₁R₂) less its first trace: add them to the first one for the
 /// full form.
