@@ -1,4 +1,4 @@
-// Wires that answer along their axis alone (METHODS §5, plain wires).
+// Wires that answer along their axis alone (METHODS §4, plain wires).
 #pragma once
 
 #include <gapwright/response/conditions.hpp>

@@ -1,4 +1,4 @@
-// A ribbon as a scatterer: what its rows answer to a potential from outside (METHODS §5, rows).
+// A ribbon as a scatterer: what its rows answer to a potential from outside (METHODS §4, rows).
 #pragma once
 
 #include <gapwright/catalog/entries.hpp>
