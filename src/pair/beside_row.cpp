@@ -68,7 +68,6 @@ std::optional<CurvePoint> BesideRow::rest() {
 void BesideRow::fill(const CurvePoint& point) {
   const double gap = *row_.gap_nm, dispersion = point.energy.value;
   const double distance = curve_.touching_nm() + gap;
-  const Estimate share = curve_.electronic_share(gap);
   row_.axis_distance_nm = distance;
   row_.*fields_.dispersion = dispersion;
   if (row_.temperature_K > 0) row_.thermal_share = point.static_part / dispersion;
@@ -77,8 +76,11 @@ void BesideRow::fill(const CurvePoint& point) {
   row_.exponent = -distance * point.slope.value / dispersion;
   row_.energy_error = point.energy.error;
   row_.relative_error = point.energy.error / std::fabs(dispersion);
-  row_.*fields_.share = share.value;
-  row_.electronic_share_error = share.error + share_precision * std::fabs(dispersion);
+  if (curve_.has_electronic_share()) {
+    const Estimate share = curve_.electronic_share(gap);
+    row_.*fields_.share = share.value;
+    row_.electronic_share_error = share.error + share_precision * std::fabs(dispersion);
+  }
   if (contact_)
     fill_contact(point);
   else
@@ -117,6 +119,7 @@ void bind_beside(const PairCurve& curve, const Placement& placement, double tole
   curve.announce(placement.gap_nm.value_or(closest_visited_nm));
   row.gap_nm = placement.gap_nm;
   row.angle_deg = placement.angle_deg;
+  row.offset_nm = placement.offset_nm;
   BesideRow beside(curve, contact, crossed ? in_all : per_length, row);
   const std::optional<CurvePoint> found =
       placement.gap_nm ? curve.dispersion(*placement.gap_nm, true) : beside.rest();
@@ -124,6 +127,7 @@ void bind_beside(const PairCurve& curve, const Placement& placement, double tole
   beside.fill(*found);
   beside.judge(*found, tolerance);
   row.notes = notes_of(row);
+  if (std::string note = curve.note(*row.gap_nm); !note.empty()) row.notes.push_back(note);
 }
 
 }  // namespace gapwright

@@ -5,6 +5,7 @@
 #include "fit.hpp"
 #include "over_curve.hpp"
 #include "parallel_curve.hpp"
+#include "rows_fit.hpp"
 #include "tube_cache.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
@@ -43,6 +44,12 @@ std::string kind_of(const Tube& tube) {
   return tube.metallic() ? "metallic" : "semiconducting";
 }
 
+/// What a row says of one body.
+struct BodyFields {
+  std::string label, kind;
+  std::optional<double> diameter_nm, chiral_angle_deg, band_gap_eV;
+};
+
 }  // namespace
 
 struct Binder::Impl {
@@ -53,6 +60,7 @@ struct Binder::Impl {
                settings.conditions, make_nodes(settings.tolerance, settings.conditions),
                all.liquid(settings.conditions.medium)},
         cache(carbon),
+        ribbons(carbon, all.ribbon_edges()),
         cold{carbon.hopping, carbon.background, {}, make_nodes(settings.tolerance)},
         cold_cache(cold),
         contacts(catalogs, cold, is_reference() ? cache : cold_cache),
@@ -67,51 +75,61 @@ struct Binder::Impl {
   Settings settings;
   Carbon carbon;
   TubeCache cache;
+  RibbonCache ribbons;
   Carbon cold;
   TubeCache cold_cache;
   ContactTerms contacts;
   ContactTerms warm_sheets;  // for sheets at the conditions
 
-  void describe_first(const TubeObject& tubes, Binding& row);
-  void describe_second(const Object& object, Binding& row);
+  BodyFields fields_of(const Object& object);
   /// A row with all that is known of it before its energies.
   Binding described(const Placement& placement);
 };
 
-// Of several walls, the outermost one stands for the body.
-void Binder::Impl::describe_first(const TubeObject& tubes, Binding& row) {
-  const Tube& wall = tubes.walls.back();
-  row.object_1 = label_of(tubes);
-  row.kind_1 = kind_of(wall);
-  row.diameter_1_nm = wall.diameter_nm();
-  row.chiral_angle_1_deg = wall.chiral_angle_deg();
-  row.band_gap_1_eV = cache.gaps(wall).band_gap_eV;
-}
-
-void Binder::Impl::describe_second(const Object& object, Binding& row) {
-  row.object_2 = label_of(object);
-  const TubeObject* tubes = std::get_if<TubeObject>(&object);
-  if (!tubes) {
-    row.kind_2 = std::holds_alternative<SheetObject>(object) ? "sheet" : "half-space";
-    return;
+BodyFields Binder::Impl::fields_of(const Object& object) {
+  BodyFields fields;
+  fields.label = label_of(object);
+  if (const TubeObject* tubes = std::get_if<TubeObject>(&object)) {
+    // Of several walls, the outermost one stands for the body.
+    const Tube& wall = tubes->walls.back();
+    fields.kind = kind_of(wall);
+    fields.diameter_nm = wall.diameter_nm();
+    fields.chiral_angle_deg = wall.chiral_angle_deg();
+    fields.band_gap_eV = cache.gaps(wall).band_gap_eV;
+  } else if (const RibbonObject* ribbon = std::get_if<RibbonObject>(&object)) {
+    fields.kind = ribbon->ribbon.edge == RibbonEdge::armchair ? "armchair ribbon" : "zigzag ribbon";
+    fields.band_gap_eV = ribbons.band_gap_eV(ribbon->ribbon);
+  } else if (const WireObject* wire = std::get_if<WireObject>(&object)) {
+    fields.kind = "wire";
+    fields.diameter_nm = 2 * catalogs.wire(wire->name).radius_nm;
+    fields.band_gap_eV = 0.0;
+  } else {
+    fields.kind = std::holds_alternative<SheetObject>(object) ? "sheet" : "half-space";
   }
-  const Tube& wall = tubes->walls.back();
-  row.kind_2 = kind_of(wall);
-  row.diameter_2_nm = wall.diameter_nm();
-  row.chiral_angle_2_deg = wall.chiral_angle_deg();
-  row.band_gap_2_eV = cache.gaps(wall).band_gap_eV;
+  return fields;
 }
 
 Binding Binder::Impl::described(const Placement& placement) {
-  Binding row;
-  const TubeObject& object = tubes_of(placement.first);
+  BodyFields first, second;
   if (placement.arrangement == Arrangement::coaxial) {
-    describe_first({{object.walls.begin(), object.walls.end() - 1}}, row);
-    describe_second(TubeObject{{object.walls.back()}}, row);
+    const TubeObject& object = tubes_of(placement.first);
+    first = fields_of(TubeObject{{object.walls.begin(), object.walls.end() - 1}});
+    second = fields_of(TubeObject{{object.walls.back()}});
   } else {
-    describe_first(object, row);
-    describe_second(*placement.second, row);
+    first = fields_of(placement.first);
+    second = fields_of(*placement.second);
   }
+  Binding row;
+  row.object_1 = first.label;
+  row.kind_1 = first.kind;
+  row.diameter_1_nm = first.diameter_nm;
+  row.chiral_angle_1_deg = first.chiral_angle_deg;
+  row.band_gap_1_eV = first.band_gap_eV;
+  row.object_2 = second.label;
+  row.kind_2 = second.kind;
+  row.diameter_2_nm = second.diameter_nm;
+  row.chiral_angle_2_deg = second.chiral_angle_deg;
+  row.band_gap_2_eV = second.band_gap_eV;
   row.arrangement = arrangement_word(placement.arrangement);
   row.temperature_K = settings.conditions.temperature_K;
   row.chemical_potential_eV = settings.conditions.chemical_potential_eV;
@@ -164,9 +182,14 @@ Binding Binder::bind(const Placement& placement) const {
 std::unique_ptr<PairCurve> Binder::curve(const Placement& placement) const {
   const Carbon& carbon = impl_->carbon;
   require_fit(placement, impl_->catalogs, carbon.medium, carbon.conditions.retarded);
+  if (rows_take_part(placement))
+    return curve_of_rows(placement, impl_->catalogs, carbon, impl_->cache, impl_->ribbons);
   const TubeObject& first = tubes_of(placement.first);
   switch (placement.arrangement) {
     case Arrangement::coaxial:
+    case Arrangement::stacked:
+    case Arrangement::coplanar:
+    case Arrangement::edge_on:
       break;
     case Arrangement::parallel:
       return std::make_unique<ParallelCurve>(first, tubes_of(*placement.second), carbon,

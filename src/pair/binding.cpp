@@ -104,6 +104,7 @@ const std::vector<BindingField>& binding_fields() {
       field<&Binding::arrangement>("arrangement"),
       field<&Binding::gap_nm>("gap_nm"),
       field<&Binding::axis_distance_nm>("axis_distance_nm"),
+      field<&Binding::offset_nm>("offset_nm"),
       field<&Binding::angle_deg>("angle_deg"),
       field<&Binding::temperature_K>("temperature_K"),
       field<&Binding::chemical_potential_eV>("chemical_potential_eV"),

@@ -1,5 +1,7 @@
 #include "fit.hpp"
 
+#include "rows_fit.hpp"
+
 #include <gapwright/catalog/input_error.hpp>
 #include <gapwright/join/crossed.hpp>
 #include <gapwright/pair/binder.hpp>
@@ -73,7 +75,7 @@ void require_flat_body(const Placement& placement, const Catalogs& catalogs, con
 }
 
 void require_retardable(const Placement& placement) {
-  const bool coaxial = placement.arrangement == Arrangement::coaxial;
+  const bool coaxial = placement.arrangement == Arrangement::coaxial && !rows_take_part(placement);
   if (coaxial && tubes_of(placement.first).walls.size() <= 2) return;
   refuse("retardation is not computed for " +
              (coaxial ? std::string("more than two walls")
@@ -85,7 +87,8 @@ void require_retardable(const Placement& placement) {
 void require_well(const Placement& placement, const Medium& around) {
   if (placement.gap_nm || placement.arrangement == Arrangement::coaxial) return;
   const bool half_space = std::holds_alternative<HalfSpaceObject>(*placement.second);
-  if (!half_space && is_vacuum(around)) return;
+  const bool wire = rows_take_part(placement) && !rows_have_contact(placement);
+  if (!half_space && !wire && is_vacuum(around)) return;
   refuse(fmt::format("no contact term exists for {} {} {}{}, so that there is no well",
                      label_of(placement.first), half_space ? "over" : "and",
                      label_of(*placement.second), is_vacuum(around) ? "" : " in " + around.name),
@@ -97,6 +100,13 @@ void require_well(const Placement& placement, const Medium& around) {
 void require_fit(const Placement& placement, const Catalogs& catalogs, const Medium& around,
                  bool retarded) {
   if (retarded) require_retardable(placement);
+  if (rows_take_part(placement)) {
+    require_rows_fit(placement, catalogs, around);
+    require_angle(placement);
+    return require_gap(placement);
+  }
+  if (placement.offset_nm)
+    refuse("an offset is for ribbons", "offset_nm", "no offset between round bodies");
   if (placement.arrangement == Arrangement::coaxial) return require_walls(placement, around);
   tubes_of(placement.first);
   if (!placement.second)

@@ -7,8 +7,9 @@
 namespace gapwright {
 namespace {
 
-constexpr std::array arrangements = {Arrangement::coaxial, Arrangement::parallel,
-                                     Arrangement::crossed, Arrangement::over};
+constexpr std::array arrangements = {
+    Arrangement::coaxial, Arrangement::parallel, Arrangement::crossed, Arrangement::over,
+    Arrangement::stacked, Arrangement::coplanar, Arrangement::edge_on};
 
 }  // namespace
 
@@ -22,6 +23,12 @@ std::string arrangement_word(Arrangement arrangement) {
       return "crossed";
     case Arrangement::over:
       return "over";
+    case Arrangement::stacked:
+      return "stacked";
+    case Arrangement::coplanar:
+      return "coplanar";
+    case Arrangement::edge_on:
+      return "edge_on";
   }
   throw std::invalid_argument("arrangement_word: arrangement outside the enumeration");
 }

@@ -24,7 +24,8 @@ std::vector<std::string> notes_of(const Binding& row) {
     notes.push_back(
         "non-retarded: beyond 10 nm retardation weakens the energy, all but its static (n = 0) "
         "term");
-  if (row.dispersion_eV && row.first_round_trip_eV)
+  if (row.dispersion_eV && row.first_round_trip_eV &&
+      *row.dispersion_eV != *row.first_round_trip_eV)
     notes.push_back(fmt::format(
         "crossed: the dispersion is the full form, {:.2f} % beyond its first round trip",
         100 * (*row.dispersion_eV / *row.first_round_trip_eV - 1)));

@@ -30,7 +30,7 @@ struct Binding {
   std::optional<double> chiral_angle_1_deg, chiral_angle_2_deg;
   std::optional<double> band_gap_1_eV, band_gap_2_eV;
   std::string arrangement;
-  std::optional<double> gap_nm, axis_distance_nm, angle_deg;
+  std::optional<double> gap_nm, axis_distance_nm, offset_nm, angle_deg;
   double temperature_K = 0.0;
   double chemical_potential_eV = 0.0;
   std::string medium = "vacuum";

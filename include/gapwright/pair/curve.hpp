@@ -4,6 +4,8 @@
 #include <gapwright/contact/short_range.hpp>
 #include <gapwright/math/nodes.hpp>
 
+#include <string>
+
 namespace gapwright {
 
 /// How far round trips between two bodies are followed.
@@ -40,12 +42,18 @@ class PairCurve {
   virtual CurvePoint dispersion(double gap_nm, bool with_slope,
                                 RoundTrips trips = RoundTrips::all) const = 0;
 
+  /// False where a ribbon or a wire takes part: it has no like of flat graphene.
+  virtual bool has_electronic_share() const { return true; }
+
   /// Own electrons less those of flat graphene (METHODS §7), summed on the nodes: what the two
   /// share cancels in the error, too. Units as of the energy.
   virtual Estimate electronic_share(double gap_nm) const = 0;
 
   /// False where no contact term exists: in a liquid, over a half-space.
   virtual bool has_contact() const = 0;
+
+  /// What a reader must know of energies at this gap; empty: nothing.
+  virtual std::string note(double /*gap_nm*/) const { return {}; }
 
   /// Contact energy and its derivative by the gap under a pair function; units as of the energy.
   /// Zero where no contact term exists.

@@ -14,9 +14,12 @@ enum class Arrangement {
   parallel,  ///< axes side by side
   crossed,   ///< axes at an angle, in parallel planes
   over,      ///< lying over the flat sheet, or over the plane surface of a medium
+  stacked,   ///< a ribbon face to face with another one, or a tube over its face
+  coplanar,  ///< a ribbon and another body side by side in its plane
+  edge_on,   ///< the second ribbon upright on the face of the first, or a ribbon on a tube
 };
 
-/// "coaxial", "parallel", "crossed", "over" and back; throws InputError for another word.
+/// The names above as words and back; throws InputError for another word.
 std::string arrangement_word(Arrangement arrangement);
 Arrangement parse_arrangement(std::string_view word);
 
@@ -27,6 +30,7 @@ struct Placement {
   std::optional<Object> second{};     ///< beside, across or under it; none for coaxial
   std::optional<double> gap_nm{};     ///< between the surfaces; none: the equilibrium
   std::optional<double> angle_deg{};  ///< between the axes, crossed only
+  std::optional<double> offset_nm{};  ///< sideways, of the arrangements of ribbons; none: centred
 };
 
 /// The tube of an object that must be one. Throws InputError otherwise.
