@@ -12,6 +12,7 @@ struct OptionText {
   const char* name;
   const char* value;  // what stands for the value in the help; empty: a flag
   const char* help;
+  bool repeats = false;  // may be given more than once
 };
 
 struct CommandText {
@@ -91,6 +92,14 @@ const std::vector<CommandText>& commands() {
         {"--template", "FILE", "The table in a form of your own, see README"},
         {"--tubes", "RANGE", "A table for every pair of these: 10,10;17,0 or LO:HI in nm"},
         {"--output", "PATH", "File of a template or of --json; folder of --tubes"}}},
+      {"report",
+       "STORE.db",
+       "The rows of a store as one page to open in a browser, and as figures for a paper",
+       {{"--output,-o", "FILE.html", "The page; - for standard output"},
+        {"--svg", "DIR", "Every figure as an SVG file, its data as CSV"},
+        {"--pair", "A@B ...", "Pairs with figures of their own (default: the strongest four)",
+         true},
+        {"--arrangement", "WORD", "Rows of this arrangement, where a store holds several"}}},
       {"check", "", "Recompute published values and print ours beside theirs", {}},
   };
   return all;
@@ -182,6 +191,20 @@ std::string value_of(const CLI::Option& option, const std::string& name) {
   return value;
 }
 
+bool repeats(const std::string& command, const std::string& option) {
+  for (const CommandText& text : commands())
+    for (const OptionText& known : text.options)
+      if (command == text.name && option == known.name) return known.repeats;
+  return false;
+}
+
+std::vector<std::string> values_of(const CLI::Option& option, const std::string& name) {
+  for (const std::string& value : option.results())
+    if (value.empty() || value.starts_with("--"))
+      throw InputError({"has no value", name, {}, "a value: " + option.get_type_name(), {}});
+  return option.results();
+}
+
 Words words_of(const CLI::App& app) {
   Words words;
   words.command = app.get_name();
@@ -191,6 +214,8 @@ Words words_of(const CLI::App& app) {
     const std::string name = "--" + option->get_lnames().front();
     if (option->get_expected_max() == 0)
       words.flags.push_back(name);
+    else if (repeats(words.command, name))
+      words.lists[name] = values_of(*option, name);
     else
       words.values[name] = value_of(*option, name);
   }

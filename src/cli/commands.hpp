@@ -9,6 +9,7 @@ int describe(const Words& words);
 int bind(const Words& words);
 int rank(const Words& words);
 int table(const Words& words);
+int report(const Words& words);
 int check(const Words& words);
 
 }  // namespace gapwright::cli

@@ -21,8 +21,9 @@ int run_command(const Words& words) {
   if (words.command == "bind") return bind(words);
   if (words.command == "rank") return rank(words);
   if (words.command == "table") return table(words);
+  if (words.command == "report") return report(words);
   if (words.command == "check") return check(words);
-  throw InputError({"no command", {}, {}, "describe, bind, rank, table or check", {}});
+  throw InputError({"no command", {}, {}, "describe, bind, rank, table, report or check", {}});
 }
 
 int run(int argc, const char* const* argv) {

@@ -17,6 +17,7 @@ struct Words {
   std::vector<std::string> operands;
   std::map<std::string, std::string> values;
   std::vector<std::string> flags;
+  std::map<std::string, std::vector<std::string>> lists;  // of options that may be repeated
 
   bool has(const std::string& option) const { return values.contains(option); }
   bool flag(const std::string& option) const;

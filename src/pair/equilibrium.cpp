@@ -2,14 +2,24 @@
 #include <gapwright/join/coaxial.hpp>
 #include <gapwright/pair/equilibrium.hpp>
 
-#include <cmath>
+#include <algorithm>
 #include <stdexcept>
+#include <string>
 
 namespace gapwright {
 namespace {
 
 constexpr double least_gap_nm = 0.28;
 constexpr double largest_gap_nm = 0.45;
+
+void require_two_walls(const char* function, const Binder& binder, const Placement& placement) {
+  if (tubes_of(placement.first).walls.size() != 2)
+    throw std::domain_error(std::string(function) + ": walls = " + label_of(placement.first) +
+                            ", required two walls");
+  if (binder.settings().conditions.retarded)
+    throw std::domain_error(std::string(function) +
+                            ": conditions = retarded, required non-retarded");
+}
 
 // The in-plane background joins the π response: both keep their (αQ²) when the wall is displaced.
 ShellResponse with_background(ShellResponse response, const Background& background) {
@@ -40,7 +50,9 @@ ShellResponse displaced(const ShellResponse& response, double radius_nm) {
 
 class Displacement {
  public:
-  Displacement(const Binder& binder, const Tube& inner, const Tube& outer)
+  /// For gaps between the two.
+  Displacement(const Binder& binder, const Tube& inner, const Tube& outer, double least,
+               double largest)
       : conditions_(binder.settings().conditions),
         contact_(binder.contact_term(binder.settings().contact_target)),
         mid_radius_nm_(0.5 * (inner.radius_nm + outer.radius_nm)) {
@@ -48,7 +60,7 @@ class Displacement {
     const HoppingSet& hopping = binder.catalogs().hopping(settings.hopping);
     normal_only_ = binder.catalogs().background(settings.background);
     const Nodes nodes = make_nodes(settings.tolerance, conditions_);
-    window_ = united(window_at(least_gap_nm, nodes), window_at(largest_gap_nm, nodes));
+    window_ = united(window_at(least, nodes), window_at(largest, nodes));
     const auto response = [&](const Tube& tube) {
       return with_background(tube_response(tube, hopping, conditions_, nodes, window_),
                              normal_only_);
@@ -60,19 +72,29 @@ class Displacement {
 
   /// dE/dg [eV/nm²].
   double slope(double gap_nm) const {
-    const double inner = mid_radius_nm_ - gap_nm / 2, outer = mid_radius_nm_ + gap_nm / 2;
+    return dispersion(gap_nm).slope.value +
+           coaxial_energy(contact_, inner_radius(gap_nm), outer_radius(gap_nm)).slope;
+  }
+
+  /// Energy [eV/nm] and its derivative by the gap [eV/nm²].
+  CurvePoint dispersion(double gap_nm) const {
+    const double inner = inner_radius(gap_nm), outer = outer_radius(gap_nm);
     const Scatterer inside =
         shell_scatterer(Channel::outward, displaced(inner_, inner), normal_only_, window_);
     const Scatterer around =
         shell_scatterer(Channel::inward, displaced(outer_, outer), normal_only_, window_);
     const CoaxialDensity density = coaxial_density(inside, around, window_, true);
-    return frequency_sum(density.gap_slope, inside.nodes(), window_.xi, conditions_).value +
-           coaxial_energy(contact_, inner, outer).slope;
+    CurvePoint point;
+    point.energy = frequency_sum(density.energy, inside.nodes(), window_.xi, conditions_);
+    point.slope = frequency_sum(density.gap_slope, inside.nodes(), window_.xi, conditions_);
+    return point;
   }
 
  private:
+  double inner_radius(double gap_nm) const { return mid_radius_nm_ - gap_nm / 2; }
+  double outer_radius(double gap_nm) const { return mid_radius_nm_ + gap_nm / 2; }
   Window window_at(double gap_nm, const Nodes& nodes) const {
-    return coaxial_window(mid_radius_nm_ - gap_nm / 2, mid_radius_nm_ + gap_nm / 2, nodes);
+    return coaxial_window(inner_radius(gap_nm), outer_radius(gap_nm), nodes);
   }
 
   Conditions conditions_;
@@ -86,14 +108,9 @@ class Displacement {
 }  // namespace
 
 double coaxial_equilibrium_gap_nm(const Binder& binder, const Placement& placement) {
-  if (tubes_of(placement.first).walls.size() != 2)
-    throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.first) +
-                            ", required two walls");
-  if (binder.settings().conditions.retarded)
-    throw std::domain_error(
-        "coaxial_equilibrium_gap_nm: conditions = retarded, required non-retarded");
-  const Displacement pair(binder, tubes_of(placement.first).walls[0],
-                          tubes_of(placement.first).walls[1]);
+  require_two_walls("coaxial_equilibrium_gap_nm", binder, placement);
+  const std::vector<Tube>& walls = tubes_of(placement.first).walls;
+  const Displacement pair(binder, walls[0], walls[1], least_gap_nm, largest_gap_nm);
   double low = least_gap_nm, high = largest_gap_nm;
   if (!(pair.slope(low) < 0) || !(pair.slope(high) > 0))
     throw std::domain_error("coaxial_equilibrium_gap_nm: walls = " + label_of(placement.first) +
@@ -103,6 +120,23 @@ double coaxial_equilibrium_gap_nm(const Binder& binder, const Placement& placeme
     (pair.slope(middle) < 0 ? low : high) = middle;
   }
   return 0.5 * (low + high);
+}
+
+std::vector<CurvePoint> coaxial_curve(const Binder& binder, const Placement& placement,
+                                      const std::vector<double>& gaps_nm) {
+  require_two_walls("coaxial_curve", binder, placement);
+  const std::vector<Tube>& walls = tubes_of(placement.first).walls;
+  const double mid_radius = 0.5 * (walls[0].radius_nm + walls[1].radius_nm);
+  for (const double gap : gaps_nm)
+    if (!(gap >= min_gap_nm && gap < 2 * mid_radius))
+      throw std::domain_error("coaxial_curve: gap_nm = " + std::to_string(gap) +
+                              ", required 0.2 … twice the mid radius");
+  if (gaps_nm.empty()) return {};
+  const auto [least, largest] = std::minmax_element(gaps_nm.begin(), gaps_nm.end());
+  const Displacement pair(binder, walls[0], walls[1], *least, *largest);
+  std::vector<CurvePoint> points;
+  for (const double gap : gaps_nm) points.push_back(pair.dispersion(gap));
+  return points;
 }
 
 }  // namespace gapwright

@@ -225,6 +225,22 @@ std::vector<Binding> Store::read(const std::vector<std::string>& keys) const {
   return rows;
 }
 
+std::vector<StoredRun> Store::runs() const {
+  Statement select(impl_->database,
+                   "SELECT started, ended, completed, rows_computed, threads, program_version, plan"
+                   " FROM runs ORDER BY id");
+  std::vector<StoredRun> runs;
+  while (select.step())
+    runs.push_back({.started = select.text(0),
+                    .ended = select.text(1),
+                    .finished = select.integer(2) != 0,
+                    .rows_computed = select.integer(3),
+                    .threads = static_cast<int>(select.integer(4)),
+                    .program_version = select.text(5),
+                    .plan = select.text(6)});
+  return runs;
+}
+
 std::int64_t Store::begin_run(const std::string& plan, int threads) {
   Statement insert(impl_->database,
                    "INSERT INTO runs(started, program_version, threads, plan) VALUES(?,?,?,?)");

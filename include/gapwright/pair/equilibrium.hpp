@@ -1,7 +1,10 @@
-// Where the walls of a coaxial pair would rest, were their gap free.
+// A coaxial pair whose gap is thought free: its curve, and where it would rest.
 #pragma once
 
 #include <gapwright/pair/binder.hpp>
+#include <gapwright/pair/curve.hpp>
+
+#include <vector>
 
 namespace gapwright {
 
@@ -11,5 +14,12 @@ namespace gapwright {
 /// the placement has not two walls, with retardation, or when there is no minimum within 0.28 …
 /// 0.45 nm.
 double coaxial_equilibrium_gap_nm(const Binder& binder, const Placement& placement);
+
+/// Dispersion of two coaxial walls against the gap at fixed mid radius, by the same displacement
+/// [eV/nm; slope: by the gap, eV/nm²]; at the gap of the real walls that of their row to the
+/// tolerance. Throws std::domain_error when the placement has not two walls, with retardation, or
+/// for a gap outside 0.2 nm … twice the mid radius.
+std::vector<CurvePoint> coaxial_curve(const Binder& binder, const Placement& placement,
+                                      const std::vector<double>& gaps_nm);
 
 }  // namespace gapwright

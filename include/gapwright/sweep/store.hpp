@@ -27,6 +27,16 @@ struct StoreOrigin {
   Settings settings;         ///< in clear
 };
 
+/// One run that wrote into a store.
+struct StoredRun {
+  std::string started, ended;  ///< UTC; no end: it was killed, or goes on
+  bool finished = false;       ///< every row of its plan was there at the end
+  std::int64_t rows_computed = 0;
+  int threads = 0;
+  std::string program_version;
+  std::string plan;  ///< its text
+};
+
 /// Rows of one or more runs under one set of settings. Written in batches, each batch one
 /// transaction with full synchronisation: a kill loses at most the rows in flight. While open to
 /// write it belongs to this run alone; at rest it is one file.
@@ -53,6 +63,8 @@ class Store {
   void write(const std::vector<std::pair<std::string, Binding>>& rows);
   /// Rows by key, in the order of `keys`; missing ones are skipped.
   std::vector<Binding> read(const std::vector<std::string>& keys) const;
+  /// All runs, the first one first.
+  std::vector<StoredRun> runs() const;
 
   /// Notes a run; `plan` is its text.
   std::int64_t begin_run(const std::string& plan, int threads);
