@@ -38,12 +38,47 @@ install_missing() {
   apt-get install -q -y --no-install-recommends $missing </dev/null >&2
 }
 
+# What only the report and its tests need. Without it all else works, so nothing here ends the
+# set-up.
+# shellcheck disable=SC2086
+install_extras() {
+  extras=
+  command -v npm >/dev/null || extras="nodejs npm"
+  if [ "$mode" = test ]; then
+    for package in chromium chromium-driver tidy; do
+      is_installed "$package" || extras="$extras $package"
+    done
+  fi
+  [ -n "$extras" ] || return 0
+  if [ "$(id -u)" -ne 0 ]; then
+    echo "for 'gapwright report', these packages are missing:" $extras >&2
+    return 0
+  fi
+  echo "installing" $extras >&2
+  export DEBIAN_FRONTEND=noninteractive
+  { apt-get update -q && apt-get install -q -y --no-install-recommends $extras; } \
+    </dev/null >&2 || echo "not installed:" $extras >&2
+}
+
+# The packages a report is drawn with, as the lock file pins them; once is enough.
+install_web() {
+  web=src/report/web
+  cmp -s $web/package-lock.json $web/node_modules/.installed && return 0
+  if command -v npm >/dev/null && (cd $web && timeout 600 npm ci </dev/null >&2); then
+    cp $web/package-lock.json $web/node_modules/.installed
+  else
+    echo "the packages of 'gapwright report' could not be installed: all else works" >&2
+  fi
+}
+
 if command -v dpkg-query >/dev/null; then
   install_missing
+  install_extras
 else
   # shellcheck disable=SC2086
   echo "no Debian packages here; make sure these are present:" $packages >&2
 fi
+install_web
 
 if [ "$mode" = run ]; then
   cmake -S . -B build -G Ninja -DCMAKE_BUILD_TYPE=Release -DGAPWRIGHT_TESTS=OFF >&2

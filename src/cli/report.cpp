@@ -24,7 +24,7 @@ Order order_of_rows(const std::vector<Binding>& rows) {
   if (any([](const Binding& row) { return row.energy_mJ_per_m2.has_value(); }))
     return order_of("energy_mJ_per_m2");
   if (any([](const Binding& row) { return row.well_depth_eV_per_nm.has_value(); }))
-    return {"well_depth_eV_per_nm", true};
+    return order_of("well_depth_eV_per_nm");
   return order_of("energy_eV_per_nm");
 }
 

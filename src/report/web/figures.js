@@ -26,6 +26,7 @@
       labelFontSize: 11, titleFontSize: 12, titleFontWeight: 500 };
     return {
       background: "transparent",
+      aria: false, // the frame says what a figure shows; thousands of marks need no words
       font: sans,
       view: { stroke: line, strokeWidth: 1 },
       axis: { ...text, gridColor: line, gridOpacity: 0.6, domain: false, tickColor: line,
@@ -165,7 +166,7 @@
               color: { field: name, type: "quantitative", title: legendTitle(name),
                 scale: colourScale(rows, name, theme, strongestIsLow(report, name)),
                 legend: legendPlace(narrow, plotWidth) },
-              tooltip: { field: "id" },
+              tooltip: { field: "pair" },
             },
           },
           chosenLayer(theme, position),
@@ -243,7 +244,7 @@
         title: "kinds", legend: { symbolOpacity: 1, ...(narrow ? { orient: "bottom", direction: "horizontal" } : {}) } },
       shape: { field: "kinds", type: "nominal", scale: { domain: kinds, range: kindShapes }, title: "kinds" },
       opacity: { condition: { param: "kind", value: 0.75 }, value: 0.04 },
-      tooltip: { field: "id" },
+      tooltip: { field: "pair" },
     };
     const points = (yName, params) => ({
       data: { name: "rows" },
@@ -417,7 +418,7 @@
     const layer = [
       { data: { name: "places" }, mark: { type: "point", shape: hexagon, size, filled: true, fill: ink.paper, stroke: ink.line, strokeWidth: 0.8, opacity: 1 }, encoding: scales },
       { data: { name: "rows" }, mark: { type: "point", shape: hexagon, size, filled: true, opacity: 1 },
-        encoding: { ...scales, color: colourChannel, tooltip: { field: "id" } } },
+        encoding: { ...scales, color: colourChannel, tooltip: { field: "tube" } } },
       { data: { name: "labels" }, mark: { type: "text", color: ink.soft, baseline: "middle", align: "left", fontSize: 11 },
         encoding: { ...scales, text: { field: "text" } }, transform: [{ filter: "datum.align === 'left'" }], },
       { data: { name: "labels" }, mark: { type: "text", color: ink.soft, baseline: "middle", align: "right", fontSize: 11 },
@@ -434,7 +435,7 @@
         data: { name: "rows" },
         mark: { type: "text", fontSize: Math.min(10.5, step * 0.27), baseline: "middle", tooltip: null },
         encoding: { ...scales, text: { field: "short" }, color: { field: "label_ink", type: "nominal", scale: null },
-          tooltip: { field: "id" } },
+          tooltip: { field: "tube" } },
       });
     const dark = "#14181d", bright = "#ffffff";
     for (const tube of tubes) {

@@ -64,9 +64,8 @@
     plot.style.minHeight = `${plot.offsetHeight}px`;
     const marks = Object.values(figure.data).reduce((sum, rows) => sum + rows.length, 0);
     const view = new vega.View(vega.parse(gapwright.compiled(figure, withTheme)), {
-      renderer: marks > 2500 ? "canvas" : "svg", container: plot, hover: true,
+      renderer: marks > 2500 ? "canvas" : "svg", container: plot, hover: true, tooltip: hover,
     });
-    view.tooltip(hover);
     view.addEventListener("click", (event, item) => {
       if (item && item.datum && isNumber(item.datum.id)) choose(item.datum.id, figure.id);
     });
