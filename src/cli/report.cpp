@@ -119,7 +119,8 @@ int report(const Words& words) {
   const Catalogs catalogs = load_catalogs(words);
   const ReportRequest request = read_report_request(words);
   const Store store = Store::open_read_only(request.store);
-  const fs::path folder = report_folder();
+  const bool drawn = request.page || request.figures;
+  const fs::path folder = drawn ? report_folder() : fs::path();
   if (request.figures) require_node();
   const Binder binder(catalogs, store.origin().settings);
   require_same_numbers(store, binder);
@@ -139,6 +140,7 @@ int report(const Words& words) {
         *request.page == "-" ? "" : "; open " + request.page->string() + " in a browser"));
   }
   if (request.figures) write_figures(*request.figures, figures);
+  if (request.json) print(json);
   return good;
 }
 

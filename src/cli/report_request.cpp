@@ -2,6 +2,7 @@
 
 #include "binding_text.hpp"
 #include "output.hpp"
+#include "setup.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
 
@@ -86,8 +87,18 @@ ReportRequest read_report_request(const Words& words) {
   if (const auto folder = words.text("--svg")) request.figures = *folder;
   if (const auto word = words.text("--arrangement"))
     request.arrangement = at_option("--arrangement", [&] { return parse_arrangement(*word); });
-  if (!request.page && !request.figures)
+  request.json = words.flag("--json");
+  if (!request.page && !request.figures && !request.json)
     throw InputError({"nothing to write", "report", {}, "-o FILE.html, --svg DIR, or both", {}});
+  if (request.json && request.page == "-")
+    throw InputError(
+        {"two things for standard output", "-o -", {}, "--json or -o -, not both", {}});
+  if (has_settings(words))
+    throw InputError({"the settings of a report are those of its store",
+                      "report",
+                      {},
+                      "no option that changes them",
+                      {}});
   if (request.page && *request.page != "-") require_file_place(*request.page);
   if (request.figures) require_figure_folder(*request.figures);
   return request;

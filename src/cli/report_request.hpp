@@ -19,6 +19,7 @@ struct ReportRequest {
   std::optional<std::filesystem::path> figures;  ///< folder
   std::vector<std::string> pairs;                ///< as typed
   std::optional<Arrangement> arrangement;
+  bool json = false;  ///< what the page is made of, on standard output
 };
 
 /// Throws InputError when something is missing or cannot be written later.

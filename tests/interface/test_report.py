@@ -2,6 +2,7 @@
 
 import atexit
 import functools
+import json
 import os
 import pathlib
 import re
@@ -15,6 +16,7 @@ import xml.etree.ElementTree
 import browser
 import harness
 
+LOCK = pathlib.Path(__file__).resolve().parents[2] / "src/report/web/package-lock.json"
 SHARE_MISSING = "are not installed"
 PAIR = "5,5@10,10"
 # A title that would break out of a careless page.
@@ -83,6 +85,8 @@ class Refused(Report):
         self.refused(["report", self.small], "nothing to write", "-o FILE.html")
         self.refused(["report", self.small, self.small, "-o", page], "more than one store")
         self.refused(["report", self.small, "-o", page, "-o", page], "given more than once")
+        self.refused(["report", self.small, "-o", page, "--temperature-K", "300"],
+                     "those of its store")
         self.assertFalse(page.exists())
 
     def test_store(self):
@@ -145,6 +149,16 @@ class Files(Report):
         text = re.sub(r"<script.*?</script>|<pre>.*?</pre>", "", self.page(self.small).read_text(),
                       flags=re.S)
         self.assertIsNone(re.search(r"\b(src|href)=\"(?!#)|url\(|@import", text))
+
+    def test_json(self):
+        packed = json.loads(self.good("report", self.small, "--json").stdout)
+        with sqlite3.connect(self.small) as database:
+            count = database.execute("SELECT count(*) FROM pairs").fetchone()[0]
+        self.assertEqual(packed["count"], count)
+        self.assertEqual(len(packed["columns"]["gap_nm"]["numbers"]), count)
+
+    def test_no_host_is_pinned(self):
+        self.assertNotIn("://", LOCK.read_text())
 
     def test_pairs_asked_for(self):
         text = self.page(self.small, "--pair", PAIR, "5,5@12,8", "--pair", "5,5@17,1").read_text()

@@ -176,8 +176,8 @@
   };
 
   const legendPlace = (narrow, plotWidth) => narrow
-    ? { orient: "bottom", direction: "horizontal", gradientLength: Math.min(240, plotWidth) }
-    : { gradientLength: Math.min(220, plotWidth * 0.4) };
+    ? { orient: "bottom", direction: "horizontal", gradientLength: Math.min(240, plotWidth), tickCount: 5 }
+    : { gradientLength: Math.max(90, Math.min(220, plotWidth * 0.4)), tickCount: 5 };
 
   const legendTitle = (name) => {
     const { label, unit } = fieldOf(name);

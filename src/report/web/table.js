@@ -125,7 +125,8 @@
           const known = row >= 0 && table.getRow(row);
           if (known) paint(known);
         }
-        if (scroll) table.scrollToRow(id, "center", true).catch(() => {}); // filtered away
+        const target = scroll && table.getRow(id);
+        if (target && target.getPosition()) table.scrollToRow(target, "center", true); // not filtered away
       },
       // All fields of the rows that pass, in the order shown.
       csv() {
