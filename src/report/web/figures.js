@@ -150,7 +150,6 @@
       title: report.coaxial ? "Map of inner and outer walls" : "Map of pairs",
       caption: `Every pair as a point, coloured by ${titleOf(name)}. Hover for its numbers, click to `
         + "find it in the table; drag to move, shift and wheel to zoom, double-click to go back.",
-      paperCaption: `Every pair as a point, coloured by ${titleOf(name)}.`,
       data: { rows, chosen: [] },
       tables: { "": rows },
       spec: {
@@ -291,8 +290,6 @@
       caption: "Above, the energy of every pair, and as a line what geometry alone would give: the "
         + "smooth course of energy less electronic share. Below, the electronic deviation from it. Click a kind in "
         + "the legend to see it alone.",
-      paperCaption: "Energy of every pair and, as a line, what geometry alone gives; below, the "
-        + "electronic deviation from it.",
       data: { rows, trend, chosen: [], zero: [{ electronic_energy: 0 }] },
       tables: { "": rows, trend },
       spec: report.electronic
@@ -452,8 +449,6 @@
       title: "Tubes on the hexagonal lattice",
       caption: `Each tube at the place of its chiral indices, coloured by the ${gapwright.tubeColours(report)[by]} ${gapwright.tubeRoles(report)[role || "either"]}. `
         + "Arcs are diameters, rays chiral angles. Hover for the partner, click for the pair.",
-      paperCaption: "Each tube at the place of its chiral indices, coloured by the energy of its best pair; arcs are "
-        + "diameters, rays chiral angles.",
       data: { rows: tubes, places, lines: grid.lines, labels: grid.labels, chosen: [] },
       tables: { "": clean },
       spec: {
