@@ -1,7 +1,7 @@
 #include "report_request.hpp"
 
-#include "binding_text.hpp"
 #include "output.hpp"
+#include "row_text.hpp"
 #include "setup.hpp"
 
 #include <gapwright/catalog/input_error.hpp>
@@ -53,7 +53,7 @@ std::size_t row_of(const std::vector<ReportRow>& rows, const std::string& typed)
   for (std::size_t i = 0; i < rows.size(); ++i)
     if (names(objects, rows[i].binding)) return i;
   std::vector<std::string> labels;
-  for (const ReportRow& row : rows) labels.push_back(pair_text(row.binding));
+  for (const ReportRow& row : rows) labels.push_back(pair_name(row.binding));
   const std::string wanted =
       fmt::format("{}", fmt::join(objects, rows[0].binding.arrangement == "coaxial" ? "@" : " "));
   throw InputError(

@@ -166,7 +166,7 @@ class BranchSum {
         from_a_(std::size_t(a.frequencies())),
         from_b_(from_a_.size()),
         product_(from_a_.size()),
-        static_full_(crossing.first.nodes().warm() ? std::size_t(waves_.count) : 0),
+        static_full_(crossing.nodes.warm() ? std::size_t(waves_.count) : 0),
         static_halved_(static_full_.size()) {}
 
   void run() {
