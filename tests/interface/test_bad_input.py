@@ -45,7 +45,7 @@ class Labels(harness.Case):
 
 class CommandLine(harness.Case):
     def test_commands(self):
-        self.refused([], "no command", "describe, bind, rank, table, check")
+        self.refused([], "no command", "describe, bind, rank, table, report, check")
         self.refused(["bnd", "5,5@10,10"], "unknown command 'bnd'", "nearest: bind")
         self.refused(["bind", "describe"], "two commands")
         self.refused(["check", "10,10"], "unexpected '10,10'")
