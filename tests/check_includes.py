@@ -13,7 +13,8 @@ ORDER = [
     ["lattice"],
     ["bands"],
     ["response"],
-    ["shell", "wire", "sheet"],
+    ["shell"],
+    ["wire", "sheet"],  # a plain wire is the m = 0 of a round body
     ["join", "contact"],
     ["pair"],
     ["sweep", "table", "report"],

@@ -32,9 +32,13 @@ std::string body_line(const char* name, const std::string& object, const std::st
                       std::optional<double> diameter_nm, std::optional<double> chiral_angle_deg,
                       std::optional<double> band_gap_eV) {
   std::string text = fmt::format("  {:<8}{}, {}", name, object, kind);
-  if (diameter_nm)
-    text += fmt::format(", diameter {} nm, chiral angle {} deg, gap {} eV", fixed(diameter_nm, 4),
-                        fixed(chiral_angle_deg, 2), fixed(band_gap_eV, 4));
+  const auto add = [&](const char* name_of, std::optional<double> value, int decimals,
+                       const char* unit) {
+    if (value) text += fmt::format(", {} {} {}", name_of, fixed(value, decimals), unit);
+  };
+  add("diameter", diameter_nm, 4, "nm");
+  add("chiral angle", chiral_angle_deg, 2, "deg");
+  add("gap", band_gap_eV, 4, "eV");
   return text + "\n";
 }
 

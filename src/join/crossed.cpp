@@ -21,7 +21,7 @@ namespace gapwright {
 namespace {
 
 /// Lowest wave number at T > 0, in inverse distances, where charge waves are this share of the
-/// energy: room for (8.5) of METHODS, whose fit turns e^{-2qD} next to its nodes into an error.
+/// energy: room for (8.11) of METHODS, whose fit turns e^{-2qD} next to its nodes into an error.
 double lowest_static(double share, double tolerance) {
   return 2.5e-7 / (1 + 100 * share) * std::min(1.0, tolerance / 1e-4);
 }
@@ -216,7 +216,7 @@ class BranchSum {
   }
 
   /// At ξ = 0 metallic bodies screen as 1/ln q: below a joint the sum gives way to the integral of
-  /// the density per ln q that three nodes above it tell (METHODS (8.5)). What that changes.
+  /// the density per ln q that three nodes above it tell (METHODS (8.11)). What that changes.
   double static_correction(const std::vector<double>& density, int joint, int stride,
                            const std::vector<double>& weights) const {
     const double step = stride * extent_.q.step;

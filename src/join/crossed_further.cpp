@@ -7,6 +7,7 @@
 #include <gapwright/math/parallel.hpp>
 
 #include <algorithm>
+#include <array>
 #include <cmath>
 
 namespace gapwright {
@@ -22,6 +23,8 @@ constexpr double lowest_factor = 10.0;
 /// Of the coupling, rows below this share of what the mirrors neglect are left out; their part of a
 /// determinant without its trace is of second order.
 constexpr double least_share = 0.1;
+/// What the limit of static sums is off by, as a share of the part it adds.
+constexpr double limit_precision = 1.0;
 
 /// ln det + trace at one frequency, and its derivative by the distance.
 struct Further {
@@ -140,6 +143,50 @@ class GridDeterminant {
   GridMirror first_, second_;
 };
 
+/// Static waves at T > 0: each metallic mirror answers as 1/L, L = ln 1/q, and further round trips,
+/// four mirrors at least, gather down to the longest waves as L^-4 in L. The limit of sums down to
+/// `lowest`, a tenth and a hundredth of it by that law, and the part it adds.
+struct StaticLimit {
+  double value = 0.0, tail = 0.0;
+};
+StaticLimit static_limit(const std::array<double, 3>& sums) {
+  const double before = sums[1] - sums[0], last = sums[2] - sums[1];
+  const double ratio = before != 0 ? last / before : 0.0;
+  if (!(ratio > 0 && ratio < 1)) return {sums[2], std::fabs(last)};
+  // Increments A/(n + c)^4 over decades n: the rest of them by the integral from the next middle.
+  const double root = std::pow(ratio, 0.25), c = root / (1 - root);
+  const double tail = last * std::pow(c + 1, 4) / (3 * std::pow(c + 1.5, 3));
+  return {sums[2] + tail, std::fabs(tail)};
+}
+
+/// Replaces the static frequency of further round trips by the limit of long waves.
+void follow_static_waves(const Crossing& row, double step, double highest, double angle,
+                         bool with_slope, CrossedFurther& further) {
+  const Nodes& nodes = row.first.nodes();
+  std::array<double, 3> energy{}, slope{};
+  for (std::size_t i = 0; i < energy.size(); ++i) {
+    const double lowest = nodes.q.node(row.window.q.first) * 1.5 * std::pow(10.0, 2.0 - double(i));
+    const CrossedGrid grid(step, lowest, highest, angle);
+    const int lowest_index = nodes.q.index_below(grid.node(0));
+    const WaveTable a(row.first, row.window, lowest_index), b(row.second, row.window, lowest_index);
+    const Further sum = GridDeterminant(row, a, b, grid).at(0, with_slope);
+    energy[i] = sum.energy;
+    slope[i] = sum.slope;
+    further.positive = further.positive && sum.positive;
+  }
+  const auto replace = [](FrequencyDensity& density, const StaticLimit& limit) {
+    density.halved[0] += limit.value - density.full[0];
+    density.full[0] = limit.value;
+  };
+  const StaticLimit limit = static_limit(energy);
+  replace(further.energy, limit);
+  further.static_error = limit_precision * limit.tail;
+  if (!with_slope) return;
+  const StaticLimit slope_limit = static_limit(slope);
+  replace(further.slope, slope_limit);
+  further.static_slope_error = limit_precision * slope_limit.tail;
+}
+
 /// Fills values and slopes of every frequency.
 bool fill(const Crossing& row, const WaveTable& a, const WaveTable& b, const CrossedGrid& grid,
           bool with_slope, std::vector<double>& energy, std::vector<double>& slope) {
@@ -179,6 +226,7 @@ CrossedFurther further_on_grid(const Crossing& row, bool with_slope) {
   further.positive =
       fill(row, a, b, grid, with_slope, further.energy.full, further.slope.full) &&
       fill(row, a, b, coarse, with_slope, further.energy.halved, further.slope.halved);
+  if (nodes.warm()) follow_static_waves(row, step, highest, angle, with_slope, further);
   return further;
 }
 

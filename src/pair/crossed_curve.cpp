@@ -66,14 +66,15 @@ CurvePoint CrossedCurve::dispersion(double gap_nm, bool with_slope, RoundTrips t
   point.positive = further.positive;
   // Two grids: their errors have nothing to do with each other.
   const double precision = further.angle_share + further_precision * carbon_.nodes.tolerance;
-  const auto add = [&](Estimate& to, const FrequencySum& more) {
-    to.error += more.error + precision * std::fabs(to.value);
+  const double static_weight = 0.5 * thermal_energy_eV(carbon_.conditions);
+  const auto add = [&](Estimate& to, const FrequencySum& more, double static_error) {
+    to.error += more.error + precision * std::fabs(to.value) + static_weight * static_error;
     to.value += more.value;
   };
   const FrequencySum more = sum(further.energy, here);
-  add(point.energy, more);
+  add(point.energy, more, further.static_error);
   point.static_part += more.static_part;
-  if (with_slope) add(point.slope, sum(further.slope, here));
+  if (with_slope) add(point.slope, sum(further.slope, here), further.static_slope_error);
   return point;
 }
 

@@ -198,3 +198,19 @@ TEST_CASE("in a liquid and over a half-space there is dispersion alone") {
         *vacuum().bind(parallel("10,10", "10,10", 0.5)).dispersion_eV_per_nm);
   CHECK(*water().bind(over("10,10", HalfSpaceObject{"vacuum"}, 1.0)).dispersion_eV_per_nm > 0);
 }
+
+TEST_CASE(
+    "crossed metallic tubes at 300 K: the error bounds what finer nodes and a new window change") {
+  const auto at = [](double gap, double tolerance) {
+    Settings settings = in("vacuum", tolerance);
+    settings.conditions.temperature_K = 300.0;
+    const Binder binder(Catalogs::built_in(), settings);
+    return binder.curve(crossed("5,5", "5,5", gap, 90))->dispersion(gap, false);
+  };
+  const CurvePoint below = at(1.999, 1e-4), above = at(2.001, 1e-4), finer = at(2.001, 1e-5);
+  CHECK(std::fabs(above.energy.value - finer.energy.value) <=
+        above.energy.error + finer.energy.error);
+  // The window changes at a gap of 2 nm; E itself falls as D^-1.92 there.
+  const double ratio = below.energy.value / above.energy.value;
+  CHECK(ratio == Approx(std::pow(2.679 / 2.677, 1.92)).margin(2e-5));
+}

@@ -89,7 +89,7 @@ TEST_CASE("charge is conserved: the sum over the rows falls as q squared", "[rib
     CHECK(charge(hamiltonian, 1e-3, 0.1) == Approx(charge(hamiltonian, 1e-4, 0.1)).epsilon(1e-5));
 }
 
-TEST_CASE("-χ is positive, and falls with the frequency", "[ribbon]") {
+TEST_CASE("minus χ is positive, and falls with the frequency", "[ribbon]") {
   for (const RibbonHamiltonian& hamiltonian :
        {usual(RibbonEdge::armchair, 10), usual(RibbonEdge::armchair, 11),
         usual(RibbonEdge::zigzag, 6)}) {

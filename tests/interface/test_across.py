@@ -50,8 +50,11 @@ class Rows(Case):
         self.assertEqual((dry["medium"], wet["medium"]), ("vacuum", "water"))
         self.assertLess(dry["dispersion_eV_per_nm"], wet["dispersion_eV_per_nm"])
         self.assertLess(wet["dispersion_eV_per_nm"], 0)
-        self.assertEqual(wet["notes"], ["the liquid is taken as a continuum"])
-        self.row("10,10", "10,10", "--gap-nm", "1", "--crossed", "90", "--in", "ethanol")
+        self.assertEqual(wet["notes"], ["the liquid is taken as a continuum",
+                                        "salt is not included in the static term"])
+        cold = self.row("10,10", "10,10", "--gap-nm", "0.5", "--in", "water", "--temperature-K", "0")
+        self.assertEqual(cold["notes"], ["the liquid is taken as a continuum"])
+        self.row("8,4", "8,4", "--gap-nm", "1", "--crossed", "90", "--in", "ethanol")
         self.row("10,10", "--over", "vacuum", "--gap-nm", "1", "--in", "water")
         self.assertEqual(self.row("10,10", "10,10", "--gap-nm", "0.5", "--in", "vacuum"), dry)
 
@@ -90,6 +93,34 @@ class Rows(Case):
         self.assertIn("note: non-retarded: beyond 10 nm", done.stderr)
 
 
+class Ribbons(Case):
+    def test_arrangements(self):
+        """Face to face by default; the geometry of every arrangement by its axis distance."""
+        cold = ("--temperature-K", "0")
+        width = 6 * 0.142 * 3 ** 0.5 / 2  # between the edge rows of 7-AGNR
+        for options, arrangement, distance in (
+                ((), "stacked", 0.34), (("--coplanar",), "coplanar", 0.34 + width),
+                (("--edge-on",), "edge_on", 0.34 + width / 2), (("--crossed", "60"), "crossed", 0.34)):
+            row = self.row("7-AGNR", "7-AGNR", *cold, "--gap-nm", "0.34", *options)
+            self.assertEqual((row["arrangement"], row["kind_1"]), (arrangement, "armchair ribbon"))
+            self.assertAlmostEqual(row["axis_distance_nm"], distance, places=3, msg=arrangement)
+            self.assertIsNone(row["electronic_share_eV_per_nm"])
+        self.row("10,10", "7-AGNR", "--gap-nm", "0.5", *cold)
+        self.row("7-AGNR", "--over", "graphene", *cold)
+
+    def test_refusals(self):
+        pair = ["bind", "7-AGNR", "7-AGNR"]
+        self.refused([*pair, "--stacked", "--coplanar"], "--coplanar", "excludes --stacked")
+        self.refused([*pair, "--offset-nm", "0.1", "--crossed", "90"], "--crossed", "excludes")
+        self.refused(["bind", "8-AGNR", "8-AGNR"], "free carriers", "nearest: 0 K")
+        self.refused(["bind", "0-AGNR", "7-AGNR"], "0-AGNR")
+        self.refused(["bind", "1-ZGNR", "7-AGNR"], "1-ZGNR")
+        self.refused(["bind", "7.5-AGNR", "7-AGNR"], "7.5-AGNR")
+        self.refused(["bind", "200-AGNR", "7-AGNR"], "200-AGNR", "100")
+        self.refused(["bind", "7-AGNR", "7-AGNR", "--in", "water"], "water")
+        self.refused(["bind", "10,10", "wire:nope"], "unknown wire")
+
+
 class Distances(Case):
     def rows(self, *arguments):
         lines = self.good("bind", *arguments, "--json").stdout.splitlines()
@@ -101,15 +132,18 @@ class Distances(Case):
         self.assertEqual((gaps[0], gaps[-1], len(gaps)), (0.4, 40, 25))
         ratios = [b / a for a, b in zip(gaps, gaps[1:])]
         self.assertAlmostEqual(min(ratios), max(ratios), places=9)
+        shares = [row["thermal_share"] for row in rows]
+        self.assertEqual(shares, sorted(shares))
         for row in rows:
-            self.assertIsNone(row["thermal_share"])
             self.assertEqual(row["status"], "ok")
         self.assertIn("non-retarded", rows[-1]["notes"][0])
         self.assertEqual(rows[7], self.row("10,10", "10,10", "--gap-nm", repr(gaps[7])))
 
     def test_exponent_is_the_local_slope(self):
         for arguments, field in ((("10,0", "10,0"), "dispersion_eV_per_nm"),
-                                 (("5,5", "5,5", "--crossed", "90"), "dispersion_eV"),
+                                 (("8,4", "8,4", "--crossed", "90"), "dispersion_eV"),
+                                 (("5,5", "5,5", "--crossed", "90", "--temperature-K", "0"),
+                                  "dispersion_eV"),
                                  (("10,10", "--over", "silica"), "dispersion_eV_per_nm")):
             low, middle, high = (self.row(*arguments, "--gap-nm", gap)
                                  for gap in ("1.98", "2", "2.02"))
@@ -120,7 +154,7 @@ class Distances(Case):
 
     def test_semiconducting_pairs_end_in_the_fifth_power(self):
         """Wires with a gap: D⁻⁵, Dobson, White & Rubio, Phys. Rev. Lett. 96, 073201 (2006)."""
-        row = self.rows("10,0", "10,0", "--distances", "50:500")[-1]
+        row = self.rows("10,0", "10,0", "--temperature-K", "0", "--distances", "50:500")[-1]
         self.assertAlmostEqual(row["exponent"], 5, delta=0.05)
 
     def test_text(self):
@@ -129,7 +163,7 @@ class Distances(Case):
         self.assertIn("(10,10) over graphene", lines[0])
         for title in ("gap", "axis distance", "dispersion", "contact", "total", "exponent"):
             self.assertIn(title, lines[2])
-        self.assertNotIn("thermal", lines[2])
+        self.assertIn("thermal", lines[2])
         self.assertEqual(len(lines), 2 + 2 + 25 + 1)
         self.assertIn("at a gap of 20 nm: non-retarded", done.stderr)
         text = self.good("bind", "10,10", "10,10", "--in", "water", "--distances", "1:5").stdout
@@ -155,8 +189,7 @@ class BadInput(Case):
         for word in ("13-AGNR", "10,10", "", "wire:gold"):
             self.refused([*over, word], "--over")
         self.refused(["bind", "10,10", "8,4", "--over", "graphene"], "--over", "one object")
-        self.refused(["bind", "graphene", "--over", "graphene"], "graphene is no tube")
-        self.refused(["bind", "13-AGNR", "--over", "graphene"], "ribbon")
+        self.refused(["bind", "graphene", "--over", "graphene"], "graphene lies below another object")
         self.refused([*over, "vacuum", "--gap-nm", "1"], "no surface")
 
     def test_wells_where_no_contact_term_exists(self):

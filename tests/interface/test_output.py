@@ -12,7 +12,7 @@ import harness
 from harness import BESIDE, EXAMPLE, SWEEP
 
 FIELDS = """object_1 object_2 kind_1 kind_2 diameter_1_nm diameter_2_nm chiral_angle_1_deg
-    chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm angle_deg
+    chiral_angle_2_deg band_gap_1_eV band_gap_2_eV arrangement gap_nm axis_distance_nm offset_nm angle_deg
     temperature_K chemical_potential_eV medium contact_target dispersion_eV_per_nm
     contact_eV_per_nm energy_eV_per_nm dispersion_eV contact_eV energy_eV energy_mJ_per_m2
     energy_meV_per_atom pressure_dispersion_GPa pressure_GPa electronic_share_eV_per_nm
@@ -43,7 +43,7 @@ class Describe(harness.Case):
         self.assertEqual(zigzag["shape"], "zigzag")
         self.assertEqual(zigzag["kind"], "semiconducting")
         self.assertIn("U = 1.94 eV", self.good("describe", "6-ZGNR").stdout)
-        self.refused(["bind", "13-AGNR", "10,10"], "13-AGNR", "binds tubes")
+        self.refused(["rank", "--inner", "13-AGNR"], "13-AGNR")
 
     def test_one_object_a_line(self):
         done = self.good("describe", "10,10", "(6,5)", "5,5@10,10", "graphene", "--json")

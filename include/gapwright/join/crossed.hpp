@@ -46,6 +46,8 @@ struct CrossedFurther {
   FrequencyDensity slope;   ///< derivative by the distance of the axes [nm^-1]
   /// Additional error as a share of the first round trip, where the angle is interpolated.
   double angle_share = 0.0;
+  /// Additional errors of the static frequency at T > 0: its longest waves are a limit.
+  double static_error = 0.0, static_slope_error = 0.0;
   bool positive = true;  ///< false: a determinant was not positive
 };
 

@@ -48,12 +48,12 @@ struct ParsedLabel {
   std::vector<std::string> notes;  ///< e.g. "(5,8) is the mirror image of (8,5)"
 };
 
-/// Parses (10,10), 10,10, 5,5@10,10 (inner@outer, more by more @), graphene, 13-AGNR, 6-ZGNR, wire:NAME
-/// (which entry that is, the catalogue knows). m > n is accepted as the mirror image and noted. Blanks around parts are allowed. Throws InputError
-/// naming the label and, where there is one, the nearest object that is accepted, when it is
-/// anything else, when a diameter is outside 0.3 … 20 nm, when walls are not in rising order with
-/// gaps of at least 0.2 nm, or when a ribbon has fewer than 3 (AGNR), 2 (ZGNR) or more than 3000
-/// lines.
+/// Parses (10,10), 10,10, 5,5@10,10 (inner@outer, more by more @), graphene, 13-AGNR, 6-ZGNR,
+/// wire:NAME (which entry that is, the catalogue knows). m > n is accepted as the mirror image and
+/// noted. Blanks around parts are allowed. Throws InputError naming the label and, where there is
+/// one, the nearest object that is accepted, when it is anything else, when a diameter is outside
+/// 0.3 … 20 nm, when walls are not in rising order with gaps of at least 0.2 nm, or when a ribbon
+/// has fewer than 3 (AGNR), 2 (ZGNR) or more than 3000 lines.
 ParsedLabel parse_label(std::string_view label);
 
 /// "(5,5)@(10,10)", "graphene", "13-AGNR", "wire:gaas-etched", the name of the medium.
