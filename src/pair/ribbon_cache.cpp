@@ -12,22 +12,22 @@ constexpr std::size_t scatterer_bytes = std::size_t(300) << 20;
 
 }  // namespace
 
-RibbonCache::Entry& RibbonCache::entry(const Ribbon& ribbon, int xi_first) {
+RibbonCache::Entry& RibbonCache::entry(const Key& key) {
   const std::lock_guard lock(mutex_);
-  auto& slot = entries_[{ribbon, xi_first}];
+  auto& slot = entries_[key];
   if (!slot) slot = std::make_unique<Entry>();
   return *slot;
 }
 
 void RibbonCache::announce(const Ribbon& ribbon, const Window& window) {
-  Entry& e = entry(ribbon, window.xi.first);
+  Entry& e = entry({ribbon, window.xi.first, window.fine});
   const std::lock_guard lock(e.mutex);
   e.announced = e.announced.q.count == 0 ? window : united(e.announced, window);
 }
 
 std::shared_ptr<const RowScatterer> RibbonCache::scatterer(const Ribbon& ribbon,
                                                            const Window& window) {
-  Entry& e = entry(ribbon, window.xi.first);
+  Entry& e = entry({ribbon, window.xi.first, window.fine});
   std::shared_ptr<const RowScatterer> found;
   {
     const std::lock_guard lock(e.mutex);
@@ -45,7 +45,7 @@ std::shared_ptr<const RowScatterer> RibbonCache::scatterer(const Ribbon& ribbon,
     }
     found = e.scatterer;
   }
-  keep_within_bound({ribbon, window.xi.first}, found->bytes());
+  keep_within_bound({ribbon, window.xi.first, window.fine}, found->bytes());
   return found;
 }
 

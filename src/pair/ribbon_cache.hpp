@@ -11,6 +11,7 @@
 #include <map>
 #include <memory>
 #include <mutex>
+#include <tuple>
 #include <utility>
 
 namespace gapwright {
@@ -29,15 +30,16 @@ class RibbonCache {
   double band_gap_eV(const Ribbon& ribbon);
 
  private:
-  // Rows of one frequency range share responses; the range's first index stands for it.
-  using Key = std::pair<Ribbon, int>;
+  // Rows of one frequency range and one lattice of wave numbers share responses; the range's first
+  // index stands for it.
+  using Key = std::tuple<Ribbon, int, bool>;
   struct Entry {
     std::mutex mutex;
     Window announced;
     std::shared_ptr<const RowScatterer> scatterer;
   };
 
-  Entry& entry(const Ribbon& ribbon, int xi_first);
+  Entry& entry(const Key& key);
   void keep_within_bound(const Key& used, std::size_t bytes);
 
   const Carbon& carbon_;
