@@ -138,10 +138,26 @@ void read_objects(const Words& words, TableJob& job) {
   job.request.second = parse_tube(words.operands[1], "table");
 }
 
+// One table goes to standard output or into one file of one form.
+void refuse_mixed_places(const Words& words, const TableJob& job) {
+  const auto refuse = [](const char* option, const char* other, const char* expected) {
+    throw InputError({std::string("stands beside ") + other, option, {}, expected, {}});
+  };
+  if (job.csv && words.flag("--json") && !words.has("--output"))
+    refuse("--csv", "--json", "--json with --output FILE beside --csv FILE");
+  if (job.csv && job.output && !words.flag("--json") && !words.has("--template"))
+    refuse("--output", "--csv", "one of them; --output is the place of --json or --template");
+  if (job.csv && job.output && *job.csv == *job.output)
+    refuse("--output", "--csv with the same file", "two files");
+  if (job.csv && *job.csv == "-" && words.has("--template") && !words.has("--output"))
+    refuse("--csv", "--template, both for standard output", "--output FILE for the template");
+}
+
 void read_places(const Words& words, TableJob& job) {
   if (const auto file = words.text("--csv")) job.csv = *file;
   if (const auto file = words.text("--output")) job.output = *file;
   if (job.series.empty()) {
+    refuse_mixed_places(words, job);
     if (job.csv && *job.csv != "-") require_file_place(*job.csv);
     if (job.output) require_file_place(*job.output);
     return;

@@ -20,6 +20,13 @@ struct Column {
   std::optional<double> (*value)(const Table&, const TableRow&);
 };
 
+void add_sine_columns(std::vector<Column>& columns) {
+  columns.push_back(
+      {"energy_sine_eV", [](const Table&, const TableRow& r) { return r.energy_sine; }});
+  columns.push_back(
+      {"force_sine_eV_per_nm", [](const Table&, const TableRow& r) { return r.force_sine; }});
+}
+
 std::vector<Column> columns_of(TableKind kind) {
   const bool parallel = kind == TableKind::parallel;
   std::vector<Column> columns;
@@ -34,11 +41,10 @@ std::vector<Column> columns_of(TableKind kind) {
                      [](const Table&, const TableRow& r) { return r.energy; }});
   columns.push_back({parallel ? "force_eV_per_nm2" : "force_eV_per_nm",
                      [](const Table&, const TableRow& r) { return r.force; }});
-  if (kind != TableKind::crossed) return columns;
-  columns.push_back(
-      {"energy_sine_eV", [](const Table&, const TableRow& r) { return r.energy_sine; }});
-  columns.push_back(
-      {"force_sine_eV_per_nm", [](const Table&, const TableRow& r) { return r.force_sine; }});
+  if (kind == TableKind::crossed) add_sine_columns(columns);
+  if (kind != TableKind::beads)
+    columns.push_back({parallel ? "pair_potential_eV_per_nm" : "pair_potential_eV",
+                       [](const Table&, const TableRow& r) { return r.pair_potential; }});
   return columns;
 }
 
@@ -211,31 +217,32 @@ void add_angles(const Table& table, Json& object) {
 
 std::string table_json(const Table& table, const Catalogs& catalogs) {
   const Settings& s = table.settings;
-  Json object = {{"table", std::string(table_kind_word(table.kind))},
-                 {"object_1", table.object_1},
-                 {"object_2", table.object_2},
-                 {"diameter_1_nm", table.diameter_1_nm},
-                 {"diameter_2_nm", table.diameter_2_nm},
-                 {"temperature_K", s.conditions.temperature_K},
-                 {"chemical_potential_eV", s.conditions.chemical_potential_eV},
-                 {"medium", s.conditions.medium},
-                 {"hopping", s.hopping},
-                 {"background", s.background},
-                 {"contact_target", s.contact_target},
-                 {"version", program_version()},
-                 {"numerics_version", numerics_version()},
-                 {"catalog_hash", catalogs.hash()},
-                 {"inner_cut_nm", table.first_nm},
-                 {"last_distance_nm", table.last_nm},
-                 {"outer_cut_nm", maybe(table.outer_cut_nm)},
-                 {"cut_shift_eV_per_nm", maybe(table.shift)},
-                 {"well_distance_nm", maybe(table.well_distance_nm)},
-                 {"well_energy_eV_per_nm", maybe(table.well_energy)},
-                 {"tolerance", table.tolerance},
-                 {"reading_error_energy", table.reading_error.energy},
-                 {"reading_error_force", table.reading_error.force},
-                 {"dispersion_error", table.dispersion_error},
-                 {"dispersion_force_error", table.slope_error}};
+  Json object = {
+      {"table", std::string(table_kind_word(table.kind))},
+      {"object_1", table.object_1},
+      {"object_2", table.object_2},
+      {"diameter_1_nm", table.diameter_1_nm},
+      {"diameter_2_nm", table.diameter_2_nm},
+      {"temperature_K", s.conditions.temperature_K},
+      {"chemical_potential_eV", s.conditions.chemical_potential_eV},
+      {"medium", s.conditions.medium},
+      {"hopping", s.hopping},
+      {"background", s.background},
+      {"contact_target", s.conditions.medium == "vacuum" ? Json(s.contact_target) : Json(nullptr)},
+      {"version", program_version()},
+      {"numerics_version", numerics_version()},
+      {"catalog_hash", catalogs.hash()},
+      {"inner_cut_nm", table.first_nm},
+      {"last_distance_nm", table.last_nm},
+      {"outer_cut_nm", maybe(table.outer_cut_nm)},
+      {"cut_shift_eV_per_nm", maybe(table.shift)},
+      {"well_distance_nm", maybe(table.well_distance_nm)},
+      {"well_energy_eV_per_nm", maybe(table.well_energy)},
+      {"tolerance", table.tolerance},
+      {"reading_error_energy", table.reading_error.energy},
+      {"reading_error_force", table.reading_error.force},
+      {"dispersion_error", table.dispersion_error},
+      {"dispersion_force_error", table.slope_error}};
   add_angles(table, object);
   add_beads(table, object);
   object["status"] = std::string(status_word(table.status));

@@ -34,11 +34,11 @@ const std::vector<LayoutField>& layout_fields() {
       {"distance", true, number, of_length, [](S s) { return LayoutValue(s.row->distance_nm); }},
       {"gap", true, number, of_length,
        [](S s) { return LayoutValue(s.row->distance_nm - s.table.touching_nm); }},
-      {"angle", true, number, of_angle, [](S s) { return maybe(s.row->angle_deg); }},
+      {"angle", true, number, of_angle, [](S s) { return maybe(s.row->angle_deg); }, true},
       {"energy", true, number, of_energy, [](S s) { return maybe(s.row->energy); }},
       {"force", true, number, of_force, [](S s) { return maybe(s.row->force); }},
-      {"energy_sine", true, number, of_energy, [](S s) { return maybe(s.row->energy_sine); }},
-      {"force_sine", true, number, of_force, [](S s) { return maybe(s.row->force_sine); }},
+      {"energy_sine", true, number, of_energy, [](S s) { return maybe(s.row->energy_sine); }, true},
+      {"force_sine", true, number, of_force, [](S s) { return maybe(s.row->force_sine); }, true},
       {"rows", false, count, plain, [](S s) { return LayoutValue(s.count); }},
       {"kind", false, text, plain,
        [](S s) { return LayoutValue(std::string(table_kind_word(s.table.kind))); }},
@@ -60,7 +60,11 @@ const std::vector<LayoutField>& layout_fields() {
       {"medium", false, text, plain,
        [](S s) { return LayoutValue(s.table.settings.conditions.medium); }},
       {"contact_target", false, text, plain,
-       [](S s) { return LayoutValue(s.table.settings.contact_target); }},
+       [](S s) {
+         const Settings& settings = s.table.settings;
+         return LayoutValue(settings.conditions.medium == "vacuum" ? settings.contact_target
+                                                                   : std::string("none"));
+       }},
       {"tolerance", false, number, plain, [](S s) { return LayoutValue(s.table.tolerance); }},
       {"reading_error", false, number, plain,
        [](S s) {

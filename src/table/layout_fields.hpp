@@ -26,6 +26,7 @@ struct LayoutField {
   LayoutType type;
   Dimension (*dimension)(TableKind);
   LayoutValue (*value)(const LayoutSource&);
+  bool crossed_only = false;
 };
 
 const std::vector<LayoutField>& layout_fields();

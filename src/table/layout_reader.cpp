@@ -210,6 +210,9 @@ class LayoutReader {
       if (fields[i].of_row && part_ != &layout_.row_)
         throw error(word.column, "'" + word.text + "' is a field of rows",
                     "in header and footer one of " + joined(names), nearest_word(word.text, names));
+      if (fields[i].crossed_only && kind_ != TableKind::crossed)
+        throw error(word.column, "'" + word.text + "' is a field of crossed tables",
+                    "a field of " + std::string(table_kind_word(kind_)) + " tables", {});
       return int(i);
     }
     throw error(word.column, "unknown field '" + word.text + "'", "one of " + joined(names),

@@ -127,12 +127,35 @@ Table parallel_table(const Binder& binder, const TableRequest& request) {
   return table;
 }
 
+namespace {
+
+// The pair potential beside parallel and crossed rows, where tubes have a contact term at all.
+Table with_pair_potential(Table table, const Binder& binder, const TableRequest& request) {
+  const bool crossed = table.kind == TableKind::crossed;
+  Placement placement{crossed ? Arrangement::crossed : Arrangement::parallel, request.first,
+                      request.second};
+  std::unique_ptr<PairCurve> curve;
+  for (TableRow& row : table.rows) {
+    if (row.angle_deg && *row.angle_deg == 0) continue;
+    if (!curve || row.angle_deg != placement.angle_deg) {
+      placement.angle_deg = row.angle_deg;
+      curve = binder.curve(placement);
+    }
+    if (!curve->has_contact()) return table;
+    row.pair_potential =
+        curve->contact(graphitic_pair_potential(), row.distance_nm - table.touching_nm).energy;
+  }
+  return table;
+}
+
+}  // namespace
+
 Table make_table(const Binder& binder, const TableRequest& request) {
   switch (request.kind) {
     case TableKind::parallel:
-      return parallel_table(binder, request);
+      return with_pair_potential(parallel_table(binder, request), binder, request);
     case TableKind::crossed:
-      return crossed_table(binder, request);
+      return with_pair_potential(crossed_table(binder, request), binder, request);
     case TableKind::beads:
       return bead_table(binder, request);
   }

@@ -13,7 +13,8 @@ import harness
 
 EXAMPLES = harness.EXAMPLE.parent
 PAIR = ["table", "10,10", "17,0"]
-KCAL_PER_EV = 23.06054783  # CODATA 2018
+KJ_PER_MOL_PER_EV = 96.48533212  # exact constants of the SI
+NN_PER_EV_PER_NM = 0.1602176634
 NN_PER_EV_NM = 0.1602176634
 
 
@@ -42,7 +43,7 @@ class Forms(harness.Case):
     def test_csv_returns_direct_energies(self):
         comments, rows = columns(self.good(*PAIR).stdout)
         header = "\n".join(comments)
-        for word in ("(10,10) and (17,0) parallel", "0 K", "vacuum", "contact target bilayer-qmc",
+        for word in ("(10,10) and (17,0) parallel", "temperature 300 K", "vacuum", "contact target bilayer-qmc",
                      "inner cut", "outer cut none", "well distance", "tolerance 0.0001",
                      "reading errors", "dispersion error", "without retardation"):
             self.assertIn(word, header)
@@ -62,7 +63,9 @@ class Forms(harness.Case):
             self.assertEqual(table[name], [row[name] for row in rows])
         self.assertEqual(table["outer_cut_nm"], 5)
         self.assertEqual(rows[-1], {"distance_nm": 5, "gap_nm": table["gap_nm"][-1],
-                                    "energy_eV_per_nm": 0, "force_eV_per_nm2": 0})
+                                    "energy_eV_per_nm": 0, "force_eV_per_nm2": 0,
+                                    "pair_potential_eV_per_nm": rows[-1]["pair_potential_eV_per_nm"]})
+        self.assertLess(rows[-1]["pair_potential_eV_per_nm"], 0)
         self.assertEqual(table["status"], "ok")
 
     def test_crossed_and_its_limit(self):
@@ -79,16 +82,34 @@ class Forms(harness.Case):
     def test_template_in_other_units(self):
         _, rows = columns(self.good(*PAIR).stdout)
         lines = self.good(*PAIR, "--template", EXAMPLES / "columns.template").stdout.splitlines()
-        self.assertEqual(lines[0], "(10,10) beside (17,0), energy per length")
-        self.assertEqual(lines[-1], "end")
-        self.assertIn(f"{len(rows)} lines from 15.43455", lines[1])
-        for line, row in zip(lines[2:-1], rows):
-            _, distance, energy, force = map(float, line.split())
-            self.assertAlmostEqual(distance, 10 * row["distance_nm"], delta=1e-9)
-            wanted = row["energy_eV_per_nm"] * KCAL_PER_EV / 10
-            self.assertAlmostEqual(energy, wanted, delta=2e-9 * abs(wanted))
-            wanted = row["force_eV_per_nm2"] * KCAL_PER_EV / 100
-            self.assertAlmostEqual(force, wanted, delta=2e-9 * abs(wanted))
+        self.assertTrue(lines[0].startswith("% (10,10) beside (17,0)"))
+        self.assertEqual(lines[-1], f"% {len(rows)} rows")
+        for line, row in zip(lines[1:-1], rows):
+            gap, force, energy = map(float, line.split(";"))
+            self.assertAlmostEqual(gap, row["gap_nm"], delta=1e-6)
+            wanted = row["energy_eV_per_nm"] * KJ_PER_MOL_PER_EV
+            self.assertAlmostEqual(energy, wanted, delta=2e-8 * abs(wanted))
+            wanted = row["force_eV_per_nm2"] * NN_PER_EV_PER_NM
+            self.assertAlmostEqual(force, wanted, delta=2e-8 * abs(wanted))
+
+    def test_pair_potential_beside(self):
+        """Chirality-blind values at the rows of bind; none in a liquid."""
+        _, rows = columns(self.good(*PAIR).stdout)
+        row = rows[len(rows) // 2]
+        done = self.good("bind", *PAIR[1:], "--gap-nm", repr(row["gap_nm"]), "--json")
+        self.assertAlmostEqual(row["pair_potential_eV_per_nm"] /
+                               json.loads(done.stdout)["pair_potential_eV_per_nm"], 1, places=9)
+        _, rows = columns(self.good(*PAIR, "--in", "water", "--inner-cut-nm", 2.5).stdout)
+        self.assertIsNone(rows[0]["pair_potential_eV_per_nm"])
+
+    def test_fields_of_another_kind(self):
+        file = self.path("angle.template")
+        file.write_text("[row]\n{angle deg .3f} {energy eV/nm .6e}\n")
+        self.refused([*PAIR, "--template", file], ":2:", "'angle' is a field of crossed tables")
+
+    def test_mixed_places(self):
+        self.refused([*PAIR, "--csv", "a.csv", "--output", "b.csv"], "--output", "--csv")
+        self.refused([*PAIR, "--csv", "a.csv", "--json"], "--csv", "--json")
 
     def test_files(self):
         file, other = self.path("t.csv"), self.path("t.txt")
@@ -97,7 +118,7 @@ class Forms(harness.Case):
         self.assertEqual(file.read_text(), text)
         self.good(*PAIR, "--csv", file, "--template", EXAMPLES / "columns.template", "--output",
                   other)
-        self.assertTrue(other.read_text().endswith("end\n"))
+        self.assertTrue(other.read_text().endswith(" rows\n"))
         self.assertEqual(self.good(*PAIR, "--threads", 1).stdout, text)
         self.assertEqual(self.leftovers(), [])
 
@@ -259,7 +280,7 @@ class Readme(harness.Case):
         block = self.section().split("    # comments stand")[1].split("\n\n")[0]
         text = "\n".join(line[4:] for line in block.splitlines()[1:])
         lines = self.good(*PAIR, "--template", self.path("t", text + "\n")).stdout.splitlines()
-        self.assertEqual((lines[0][:20], lines[-1]), ("(10,10) and (17,0), ", "end"))
+        self.assertEqual((lines[0][:20], lines[-1]), ("% (10,10) beside (17", f"% {len(lines) - 2} rows"))
         fields = [name.strip() for line in self.section().splitlines()
                   if line.startswith("| ") and not line.startswith("| field")
                   for name in line.split("|")[1].split(",")]

@@ -35,6 +35,8 @@ struct TableRow {
   std::optional<double> angle_deg{};                  ///< crossed; 0: the limit γ → 0
   std::optional<double> energy{}, force{};            ///< none in the limit, where they diverge
   std::optional<double> energy_sine{}, force_sine{};  ///< crossed: times sin γ
+  std::optional<double>
+      pair_potential{};  ///< chirality-blind energy beside it, uncut; not of beads
 };
 
 /// How two chains of beads slide along each other at the well.
