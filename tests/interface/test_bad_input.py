@@ -64,7 +64,7 @@ class CommandLine(harness.Case):
         self.refused(["bind", "5,5", "10,10", "8,8"], "more than two objects")
         self.refused(["bind", "5,5@10,10", "--gap-nm", "1"], "--gap-nm", "two objects")
         self.refused(["bind", "10,10", "17,0", "--gap-nm", "0.1"], "--gap-nm", "0.2 to 10000")
-        self.refused(["bind", "graphene"], "is no tube")
+        self.refused(["bind", "graphene"], "graphene lies below another object")
         self.refused(["rank", "/dev/null"], "nothing says which tubes")
         self.refused(["describe"], "no object")
 
