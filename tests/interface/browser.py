@@ -31,9 +31,16 @@ class Browser:
         self._process = subprocess.Popen(
             [driver, "--port=0", "--allowed-ips=127.0.0.1"], stdout=subprocess.PIPE, text=True,
             stderr=subprocess.DEVNULL, env={**os.environ, "HOME": self._home.name})
-        port = self._port()
         self._opener = urllib.request.build_opener(urllib.request.ProxyHandler({}))
-        self._root = f"http://127.0.0.1:{port}"
+        try:
+            self._session = None
+            self._root = f"http://127.0.0.1:{self._port()}"
+            self._start(browser, width, height, dark)
+        except BaseException:
+            self.__exit__()
+            raise
+
+    def _start(self, browser, width, height, dark):
         arguments = ["--headless=new", "--no-sandbox", "--disable-gpu", "--disable-dev-shm-usage",
                      "--hide-scrollbars", "--force-device-scale-factor=1",
                      f"--user-data-dir={self._home.name}/profile",
@@ -57,8 +64,9 @@ class Browser:
         return self
 
     def __exit__(self, *_):
-        with contextlib.suppress(OSError, RuntimeError):
-            self._ask("DELETE", self._session)
+        if self._session:
+            with contextlib.suppress(OSError, RuntimeError):
+                self._ask("DELETE", self._session)
         self._process.terminate()
         self._process.communicate()
         with contextlib.suppress(OSError):
@@ -69,7 +77,7 @@ class Browser:
         request = urllib.request.Request(self._root + path, data, method=method,
                                          headers={"Content-Type": "application/json"})
         try:
-            with self._opener.open(request, timeout=120) as answer:
+            with self._opener.open(request, timeout=180) as answer:
                 return json.load(answer)["value"]
         except urllib.error.HTTPError as error:
             raise RuntimeError(json.load(error)["value"]["message"]) from None
@@ -87,7 +95,7 @@ class Browser:
         """The value that a function body returns."""
         return self.post("/execute/sync", script=script, args=list(arguments))
 
-    def wait(self, script, seconds=60):
+    def wait(self, script, seconds=150):
         """Until the expression is true; returns its value."""
         self.post("/timeouts", script=seconds * 1000)
         return self.post("/execute/async", args=[], script=f"""
