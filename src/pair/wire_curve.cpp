@@ -5,7 +5,7 @@
 #include <gapwright/join/crossed.hpp>
 #include <gapwright/join/over_sheet.hpp>
 #include <gapwright/join/parallel.hpp>
-#include <gapwright/wire/plain_wire.hpp>
+#include <gapwright/join/plain_wire.hpp>
 
 #include <algorithm>
 #include <cmath>

@@ -4,9 +4,9 @@
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/contact/rows.hpp>
 #include <gapwright/join/parallel.hpp>
+#include <gapwright/join/plain_wire.hpp>
 #include <gapwright/join/rows_tube.hpp>
 #include <gapwright/pair/binder.hpp>
-#include <gapwright/wire/plain_wire.hpp>
 
 #include <cmath>
 #include <map>

@@ -5,9 +5,9 @@
 #include <gapwright/catalog/constants.hpp>
 #include <gapwright/join/over_sheet.hpp>
 #include <gapwright/join/parallel.hpp>
+#include <gapwright/join/plain_wire.hpp>
 #include <gapwright/lattice/label.hpp>
 #include <gapwright/math/bessel.hpp>
-#include <gapwright/wire/plain_wire.hpp>
 
 #include <cmath>
 

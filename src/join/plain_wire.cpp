@@ -1,6 +1,6 @@
 #include <gapwright/catalog/constants.hpp>
+#include <gapwright/join/plain_wire.hpp>
 #include <gapwright/math/bessel.hpp>
-#include <gapwright/wire/plain_wire.hpp>
 
 #include <algorithm>
 #include <cmath>
