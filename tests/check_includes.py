@@ -13,8 +13,7 @@ ORDER = [
     ["lattice"],
     ["bands"],
     ["response"],
-    ["shell"],
-    ["wire", "sheet"],  # a plain wire is the m = 0 of a round body
+    ["shell", "wire", "sheet"],
     ["join", "contact"],
     ["pair"],
     ["sweep", "table", "report"],
